@@ -100,4 +100,4 @@ export function side(value: number | null): Side {
   if (value === null || !(Math.abs(value) >= levelBelow)) return 'level';
   return value > 0 ? 'above' : 'below';
 }
-export { monthName, periodLabel, periodNoun } from './periods.ts';
+export { monthName, periodLabel, periodNoun } from './periodLabels.ts';
