@@ -1,0 +1,26 @@
+import { Kysely, PostgresDialect } from 'kysely';
+import pg from 'pg';
+import type { Database } from './tables.ts';
+
+// A calendar date has no time zone: as a Date it would shift by a day west of Greenwich.
+pg.types.setTypeParser(pg.types.builtins.DATE, (text) => text);
+// numeric[] keeps the digits of the file; the driver's own parser would round them to doubles.
+const NUMERIC_ARRAY = 1231 as Parameters<typeof pg.types.setTypeParser>[0];
+pg.types.setTypeParser(NUMERIC_ARRAY, (text: string) =>
+  text === '{}' ? [] : text.slice(1, -1).split(','),
+);
+
+export type Db = Kysely<Database>;
+
+/** A database connection pool; `max` connections at most. Close it with `db.destroy()`. */
+export function connect(url: string, max = 10): Db {
+  return new Kysely<Database>({ dialect: new PostgresDialect({ pool: pool(url, max) }) });
+}
+
+/** The pool itself, for what speaks to PostgreSQL without Kysely (sign-in, LISTEN). */
+export function pool(url: string, max = 10): pg.Pool {
+  const made = new pg.Pool({ connectionString: url, max, connectionTimeoutMillis: 5_000 });
+  // An idle connection that the server closes must not end the process; the next query reconnects.
+  made.on('error', () => {});
+  return made;
+}

@@ -1,0 +1,2 @@
+/** Tables of sign-in, roles and API keys. */
+export type PeopleTables = Record<never, never>;

@@ -1,0 +1,23 @@
+import type { ComputeRequest, ComputeResult } from '../econ/types.ts';
+import type { ShareImage, ShareImageInput } from '../images/shareImage.ts';
+import type { View } from '../services/view.ts';
+
+/** A page as the site would answer it at the view's instant. */
+export interface RenderedPage {
+  status: number;
+  headers: Record<string, string>;
+  body: Uint8Array;
+}
+
+/** The heavy work, kept off the serving loop: in the process a pool of threads, in tests whatever answers the same. */
+export interface Workers {
+  /** Renders the page of an address with the built site; the same bytes as a request for it in that view. */
+  page(address: string, view: View): Promise<RenderedPage>;
+  /** Draws the share image of a release's surprise. */
+  shareImage(input: ShareImageInput): Promise<ShareImage>;
+  /** The contract's computation; throws econ's `RefusedError`. */
+  compute(request: ComputeRequest): Promise<ComputeResult>;
+  /** Brotli (quality 5) and gzip forms of the bytes. */
+  compress(bytes: Uint8Array): Promise<{ br: Uint8Array; gzip: Uint8Array }>;
+  close(): Promise<void>;
+}
