@@ -24,3 +24,41 @@ export function pool(url: string, max = 10): pg.Pool {
   made.on('error', () => {});
   return made;
 }
+
+/**
+ * Calls `heard` at every notification on a channel, over a connection of its own that is made again, with the
+ * call repeated, after it breaks. Answers the function that stops it.
+ */
+export async function listen(
+  url: string,
+  channel: string,
+  heard: (payload: string) => void,
+): Promise<() => Promise<void>> {
+  let stopped = false;
+  let client: pg.Client | undefined;
+  let retry: NodeJS.Timeout | undefined;
+  const again = () => {
+    if (stopped) return;
+    retry = setTimeout(() => void open().catch(again), 1_000);
+    retry.unref();
+  };
+  const open = async () => {
+    const made = new pg.Client({ connectionString: url, keepAlive: true });
+    made.on('notification', (message) => heard(message.payload ?? ''));
+    made.on('error', () => {});
+    made.on('end', () => {
+      if (client === made) again();
+    });
+    await made.connect();
+    await made.query(`listen ${pg.escapeIdentifier(channel)}`);
+    client = made;
+    // Whatever was said while nobody listened is lost: look once.
+    heard('');
+  };
+  await open();
+  return async () => {
+    stopped = true;
+    clearTimeout(retry);
+    await client?.end();
+  };
+}
