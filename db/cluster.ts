@@ -135,7 +135,9 @@ async function makeHome(place: Place, options: ClusterOptions): Promise<void> {
       await shutDown(place);
       const aside = `${place.home}-${new Date().toISOString().replace(/\D/g, '').slice(0, 14)}`;
       await rename(place.home, aside);
-      options.onProgress?.(`The database of an earlier, removed data directory is kept in ${aside}`);
+      options.onProgress?.(
+        `The database of an earlier, removed data directory is kept in ${aside}`,
+      );
     }
     await mkdir(place.home, { recursive: true });
     await chmod(place.home, place.owner ? 0o711 : 0o700);
@@ -342,7 +344,15 @@ async function makeDatabase(url: string): Promise<void> {
 
 async function shutDown(place: Place): Promise<void> {
   if ((await runningPort(place)) === null) return;
-  await program(place, 'pg_ctl', ['stop', '-w', '-t', '60', '-m', 'fast', `--pgdata=${place.data}`]);
+  await program(place, 'pg_ctl', [
+    'stop',
+    '-w',
+    '-t',
+    '60',
+    '-m',
+    'fast',
+    `--pgdata=${place.data}`,
+  ]);
 }
 
 function reason(error: unknown): string {
