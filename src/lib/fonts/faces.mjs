@@ -61,4 +61,14 @@ export const basicCharacters =
   '\u00a0\u2212–—‘’“”·±×éÉ…§©°²³½£€';
 
 /** Kept in the slices: figures and ligatures as the type rules need them, nothing for small capitals or swashes. */
-export const keptFeatures = ['calt', 'ccmp', 'kern', 'liga', 'lnum', 'locl', 'mark', 'pnum', 'tnum'];
+export const keptFeatures = [
+  'calt',
+  'ccmp',
+  'kern',
+  'liga',
+  'lnum',
+  'locl',
+  'mark',
+  'pnum',
+  'tnum',
+];
