@@ -14,7 +14,12 @@ export type Db = Kysely<Database>;
 
 /** A database connection pool; `max` connections at most. Close it with `db.destroy()`. */
 export function connect(url: string, max = 10): Db {
-  return new Kysely<Database>({ dialect: new PostgresDialect({ pool: pool(url, max) }) });
+  return databaseOn(pool(url, max));
+}
+
+/** The database over a pool that others (sign-in) use too; `destroy` closes the pool. */
+export function databaseOn(shared: pg.Pool): Db {
+  return new Kysely<Database>({ dialect: new PostgresDialect({ pool: shared }) });
 }
 
 /** The pool itself, for what speaks to PostgreSQL without Kysely (sign-in, LISTEN). */

@@ -163,6 +163,12 @@ export interface AuditTable {
   hash: string;
 }
 
+export interface DemoSeedTable {
+  only: Generated<boolean>;
+  started_at: Time;
+  finished_at: Time | null;
+}
+
 export interface Database extends PeopleTables {
   economy: EconomyTable;
   series: SeriesTable;
@@ -179,6 +185,7 @@ export interface Database extends PeopleTables {
   publication: PublicationTable;
   announcement: AnnouncementTable;
   audit: AuditTable;
+  demo_seed: DemoSeedTable;
 }
 
 export type Release = Selectable<ReleaseTable>;

@@ -184,6 +184,13 @@ export async function up(db: Kysely<any>): Promise<void> {
     );
     create index audit_by_subject on audit (subject, id);
 
+    -- a first seeding that was broken off is begun again from an empty database
+    create table demo_seed (
+      only boolean primary key default true check (only),
+      started_at timestamptz not null,
+      finished_at timestamptz
+    );
+
     create function refuse_change() returns trigger language plpgsql as $$
     begin
       raise exception '% is written once and never changed', tg_table_name

@@ -80,3 +80,23 @@ export async function nextGeneration(trx: Transaction<Database>): Promise<string
   await sql`select pg_notify('published', ${row.generation})`.execute(trx);
   return row.generation;
 }
+
+/** Hash in force at `at` of each of the addresses that has one. */
+export async function currentHashes(
+  db: Db,
+  addresses: string[],
+  at: Date,
+): Promise<Map<string, string>> {
+  const rows = await db
+    .selectFrom('published')
+    .innerJoin('moment', 'moment.visible_from', 'published.visible_from')
+    .distinctOn('published.address')
+    .select(['published.address', 'published.artefact_hash'])
+    .where('moment.ready', '=', true)
+    .where('published.visible_from', '<=', at)
+    .where('published.address', 'in', addresses)
+    .orderBy('published.address')
+    .orderBy('published.visible_from', 'desc')
+    .execute();
+  return new Map(rows.map((row) => [row.address, row.artefact_hash]));
+}

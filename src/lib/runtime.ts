@@ -2,6 +2,7 @@ import type { Db } from '../../db/connection.ts';
 import type { Auth } from './auth.ts';
 import type { Clock } from './clock.ts';
 import type { Env } from './env.ts';
+import type { Logger } from './log.ts';
 import type { Mailer } from './mail.ts';
 import type { ArtefactStore } from './publication/store.ts';
 import type { Workers } from './publication/workers.ts';
@@ -16,6 +17,7 @@ export interface Runtime {
   workers: Workers;
   mail: Mailer;
   auth: Auth;
+  log: Logger;
   build: string;
 }
 

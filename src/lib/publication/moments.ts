@@ -1,0 +1,313 @@
+import { type Transaction, sql } from 'kysely';
+import type { Db } from '../../../db/connection.ts';
+import { currentHashes, nextGeneration } from '../../../db/queries/published.ts';
+import type { Database } from '../../../db/tables.ts';
+import type { InTransaction, ServiceContext } from '../services/context.ts';
+import type { View } from '../services/view.ts';
+import { type Kept, keep, recordArtefacts } from './artefacts.ts';
+import { type Planned, SITE_PAGES, economyPage, releasePages } from './plan.ts';
+import { type PlacedFile, filesOf } from './files.ts';
+
+/** How long after drawing an immediate change counts, so that every process has it before it does. */
+const IMMEDIATE_MS = 3_000;
+/** One publication at a time in the whole system. */
+const LOCK = 7_305_001;
+
+interface Coming extends Planned {
+  id: string;
+  at: Date;
+  vintageId: string;
+}
+
+interface Row {
+  address: string;
+  kept: Kept;
+  status: number;
+  headers: Record<string, string>;
+  isPage: boolean;
+}
+
+interface Moment {
+  at: Date;
+  releases: Coming[];
+  rows: Row[];
+}
+
+/**
+ * Draws what has changed: what counts at once (announced dates, a new economy) and every coming moment in order,
+ * each on top of the one before, and puts all of it in force in one transaction. Throws, with nothing changed,
+ * where a page cannot be drawn; the next call, from whichever process, finds the same work and does it.
+ */
+export async function bringUpToDate(ctx: ServiceContext): Promise<void> {
+  await exclusively(ctx.db, async () => {
+    const coming = await comingReleases(ctx.db, ctx.now());
+    const moments: Moment[] = [];
+    for (const releases of groupBySecond(coming)) {
+      const at = releases[0]!.at;
+      moments.push({ at, releases, rows: await drawMoment(ctx, at, releases) });
+    }
+    const immediate = await drawImmediate(ctx);
+    const effective = new Date(ctx.now().getTime() + IMMEDIATE_MS);
+    // A moment within the next seconds is drawn with the same announcements: it needs no change before it.
+    const isCovered = moments.some((moment) => moment.at <= effective);
+    if (immediate.length > 0 && !isCovered) {
+      moments.unshift({ at: effective, releases: [], rows: immediate });
+    }
+    await putInForce(ctx, moments);
+  });
+}
+
+/** Whether a scheduled release waits for its pages: a process died, or drawing failed. */
+export async function isBehind(db: Db, at: Date): Promise<boolean> {
+  const waiting = await db
+    .selectFrom('release')
+    .select('id')
+    .where('state', '=', 'scheduled')
+    .where('scheduled_for', '>', at)
+    .where((eb) => eb('ready_for', 'is distinct from', eb.ref('scheduled_for')))
+    .limit(1)
+    .executeTakeFirst();
+  return waiting !== undefined;
+}
+
+/**
+ * Takes a coming moment out, in the transaction that unschedules its release: its rows go, and the later moments,
+ * drawn on top of it, do not count until they are drawn again (`bringUpToDate`).
+ */
+export async function takeOut(ctx: InTransaction, at: Date): Promise<void> {
+  await ctx.db.deleteFrom('moment').where('visible_from', '=', at).execute();
+  await ctx.db.updateTable('moment').set({ ready: false }).where('visible_from', '>', at).execute();
+  await ctx.db
+    .updateTable('release')
+    .set({ ready_for: null })
+    .where('state', '=', 'scheduled')
+    .where('ready_for', '>=', at)
+    .execute();
+  await resetPublicFrom(ctx.db, at);
+  await nextGeneration(ctx.db);
+}
+
+/**
+ * Draws the pages again that another build, or another public address, has drawn: all that are in force or coming.
+ * Frozen images and files stay as they are. Answers how many it drew.
+ */
+export async function redraw(
+  ctx: ServiceContext,
+  onPage?: (done: number, all: number) => void,
+): Promise<number> {
+  return exclusively(ctx.db, async () => {
+    const now = ctx.now();
+    const stale = await ctx.db
+      .selectFrom('published')
+      .select(['address', 'visible_from'])
+      .where('build', 'is not', null)
+      .where('build', '<>', ctx.build)
+      .where((eb) =>
+        eb.not(
+          eb.exists(
+            eb
+              .selectFrom('published as later')
+              .select('later.address')
+              .whereRef('later.address', '=', 'published.address')
+              .whereRef('later.visible_from', '>', 'published.visible_from')
+              .where('later.visible_from', '<=', now),
+          ),
+        ),
+      )
+      .execute();
+    const drawn: { at: Date; row: Row }[] = [];
+    for (const { address, visible_from } of stale) {
+      const row = await drawPage(ctx, address, {
+        at: visible_from,
+        rehearsal: visible_from > now,
+      });
+      drawn.push({ at: visible_from, row });
+      onPage?.(drawn.length, stale.length);
+    }
+    if (drawn.length === 0) return 0;
+    await ctx.db.transaction().execute(async (trx) => {
+      await recordArtefacts(
+        trx,
+        drawn.map(({ row }) => row.kept),
+        now,
+      );
+      const generation = await nextGeneration(trx);
+      for (const { at, row } of drawn) await insertRows(trx, at, [row], ctx.build, generation);
+    });
+    return drawn.length;
+  });
+}
+
+async function exclusively<T>(db: Db, work: () => Promise<T>): Promise<T> {
+  return db.connection().execute(async (connection) => {
+    await sql`select pg_advisory_lock(${LOCK})`.execute(connection);
+    try {
+      return await work();
+    } finally {
+      await sql`select pg_advisory_unlock(${LOCK})`.execute(connection);
+    }
+  });
+}
+
+async function comingReleases(db: Db, now: Date): Promise<Coming[]> {
+  const rows = await db
+    .selectFrom('release')
+    .select(['id', 'economy_code', 'period', 'revision', 'scheduled_for', 'vintage_id'])
+    .where('state', '=', 'scheduled')
+    .where('scheduled_for', '>', now)
+    .orderBy('scheduled_for')
+    .orderBy('id')
+    .execute();
+  return rows.map((row) => ({
+    id: row.id,
+    economyCode: row.economy_code,
+    period: row.period,
+    revision: row.revision,
+    at: row.scheduled_for!,
+    vintageId: row.vintage_id,
+  }));
+}
+
+function groupBySecond(coming: Coming[]): Coming[][] {
+  const groups = new Map<number, Coming[]>();
+  for (const release of coming) {
+    const time = release.at.getTime();
+    groups.set(time, [...(groups.get(time) ?? []), release]);
+  }
+  return [...groups.values()];
+}
+
+async function drawMoment(ctx: ServiceContext, at: Date, releases: Coming[]): Promise<Row[]> {
+  const view: View = { at, rehearsal: true };
+  const pages = new Set<string>(SITE_PAGES);
+  const files: PlacedFile[] = [];
+  for (const release of releases) {
+    pages.add(economyPage(release.economyCode));
+    for (const address of releasePages(release)) pages.add(address);
+    files.push(...(await filesOf(ctx, view, release)));
+  }
+  const rows = await Promise.all([...pages].map((address) => drawPage(ctx, address, view)));
+  for (const { address, kept } of files) {
+    const headers = {
+      'content-type': kept.mediaType,
+      'x-content-type-options': 'nosniff',
+      'access-control-allow-origin': '*',
+    };
+    rows.push({ address, kept, status: 200, headers, isPage: false });
+  }
+  return rows;
+}
+
+/** The site's and the economies' pages as they are now, where that differs from what is in force. */
+async function drawImmediate(ctx: ServiceContext): Promise<Row[]> {
+  const now = ctx.now();
+  const economies = await ctx.db
+    .selectFrom('announcement')
+    .select('economy_code')
+    .distinct()
+    .where('announced_at', '<=', now)
+    .execute();
+  const pages = [...SITE_PAGES, ...economies.map((row) => economyPage(row.economy_code))];
+  const rows = await Promise.all(pages.map((address) => drawPage(ctx, address, { at: now })));
+  const inForce = await currentHashes(ctx.db, pages, now);
+  return rows.filter((row) => inForce.get(row.address) !== row.kept.hash);
+}
+
+async function drawPage(ctx: ServiceContext, address: string, view: View): Promise<Row> {
+  const page = await ctx.workers.page(address, view);
+  const expected = address === '/404/' ? 404 : 200;
+  if (page.status !== expected) {
+    throw new Error(`${address} answered ${page.status} while it was drawn`);
+  }
+  const mediaType = page.headers['content-type'] ?? 'text/html; charset=utf-8';
+  const kept = await keep(ctx, page.body, mediaType);
+  return { address, kept, status: page.status, headers: page.headers, isPage: true };
+}
+
+async function putInForce(ctx: ServiceContext, moments: Moment[]): Promise<void> {
+  const now = ctx.now();
+  // What is late by now stays out: a moment never counts from a second that has passed.
+  const inTime = moments.filter((moment) => moment.at > now);
+  if (inTime.length === 0) return;
+  await ctx.db.transaction().execute(async (trx) => {
+    const generation = await nextGeneration(trx);
+    await recordArtefacts(
+      trx,
+      inTime.flatMap((moment) => moment.rows.map((row) => row.kept)),
+      now,
+    );
+    for (const moment of inTime) {
+      await trx.deleteFrom('published').where('visible_from', '=', moment.at).execute();
+      await trx
+        .insertInto('moment')
+        .values({ visible_from: moment.at, ready: true, rendered_at: now })
+        .onConflict((conflict) =>
+          conflict.column('visible_from').doUpdateSet({ ready: true, rendered_at: now }),
+        )
+        .execute();
+      await insertRows(trx, moment.at, moment.rows, ctx.build, generation);
+      for (const release of moment.releases) {
+        await trx
+          .updateTable('release')
+          .set({ ready_for: moment.at })
+          .where('id', '=', release.id)
+          .where('state', '=', 'scheduled')
+          .where('scheduled_for', '=', moment.at)
+          .execute();
+        await trx
+          .updateTable('vintage')
+          .set({ public_from: sql`least(public_from, ${moment.at})` })
+          .where('id', '=', release.vintageId)
+          .execute();
+      }
+    }
+  });
+}
+
+async function insertRows(
+  trx: Transaction<Database>,
+  at: Date,
+  rows: Row[],
+  build: string,
+  generation: string,
+): Promise<void> {
+  if (rows.length === 0) return;
+  await trx
+    .insertInto('published')
+    .values(
+      rows.map((row) => ({
+        address: row.address,
+        visible_from: at,
+        artefact_hash: row.kept.hash,
+        status: row.status,
+        headers: JSON.stringify(row.headers),
+        build: row.isPage ? build : null,
+        generation,
+      })),
+    )
+    .onConflict((conflict) =>
+      conflict.columns(['address', 'visible_from']).doUpdateSet((eb) => ({
+        artefact_hash: eb.ref('excluded.artefact_hash'),
+        status: eb.ref('excluded.status'),
+        headers: eb.ref('excluded.headers'),
+        build: eb.ref('excluded.build'),
+        generation: eb.ref('excluded.generation'),
+      })),
+    )
+    .execute();
+}
+
+/** A vintage becomes public with the first release that freezes it; the one just taken out may have been that. */
+async function resetPublicFrom(trx: Transaction<Database>, takenOut: Date): Promise<void> {
+  await trx
+    .updateTable('vintage')
+    .set((eb) => ({
+      public_from: eb
+        .selectFrom('release')
+        .select((inner) => inner.fn.min('release.ready_for').as('first'))
+        .whereRef('release.vintage_id', '=', 'vintage.id')
+        .where('release.state', '=', 'scheduled'),
+    }))
+    .where('public_from', '>=', takenOut)
+    .execute();
+}
