@@ -1,0 +1,15 @@
+import gammainc from '@stdlib/math-base-special-gammainc';
+import quantile from '@stdlib/stats-base-dists-normal-quantile';
+
+/**
+ * P(χ²(df) > x), by the upper incomplete gamma function rather than 1 − cdf, so that small p-values keep their digits.
+ * @param x Statistic ≥ 0. @param df Degrees of freedom ≥ 1.
+ */
+export function chiSquaredSurvival(x: number, df: number): number {
+  return gammainc(Math.max(x, 0) / 2, df / 2, true, true);
+}
+
+/** Φ⁻¹(p) of the standard normal distribution, 0 < p < 1. */
+export function normalQuantile(p: number): number {
+  return quantile(p, 0, 1);
+}

@@ -1,0 +1,144 @@
+import ln from '@stdlib/math-base-special-ln';
+import { UpdatedLeastSquares } from '../linear/updating.ts';
+import { constant } from '../linear/equation.ts';
+import { formatPeriod } from '../periods.ts';
+import { RefusedError } from '../refusal.ts';
+import { indicators, lagged, type Data } from '../series.ts';
+import type { Expectation } from '../types.ts';
+import { emptyPath, type ExpectationPath } from './expectation.ts';
+
+/** The rules that learn by least squares. */
+export type RegressionRule = Extract<Expectation, { rule: 'random_walk' | 'autoregression' }>;
+
+/** Largest lag order of a rule: P of the method's section 3. */
+export function largestOrder(rule: Expectation): number {
+  if (rule.rule !== 'autoregression') return 0;
+  return typeof rule.order === 'number' ? rule.order : rule.order.max;
+}
+
+/**
+ * One-step expectations by recursive least squares (method, section 2): at each target t, growth on a constant,
+ * seasonal indicators and its own lags over the window that ends at t − 1.
+ *
+ * Columns are ordered constant, indicators, lag 1…P, so one triangular factor holds the fits of every order: order p
+ * uses its leading columns, and what the others explain is added to its squared residuals.
+ * @param persistence ρ, for the path of the coefficients' error.
+ * @throws RefusedError where money is too short for the window, or a window is rank-deficient.
+ */
+export function regressionExpectation(
+  data: Data,
+  rule: RegressionRule,
+  persistence: number,
+): ExpectationPath {
+  const largest = largestOrder(rule);
+  const fixed = [constant(data.length), ...(rule.seasonal === 'dummies' ? indicators(data) : [])];
+  const lags = Array.from({ length: largest }, (_, j) => lagged(data.growth, j + 1));
+  const rows = transpose([...fixed, ...lags], data.length);
+  const k = fixed.length + largest;
+  const firstRow = largest + 1;
+  const { kind, length } = rule.window;
+  const first = firstRow + length;
+  if (first >= data.length) throw tooShort(data.length, first + 1);
+
+  const chooses = rule.rule === 'autoregression' && typeof rule.order !== 'number';
+  const path = emptyPath(first, data.length - first);
+  if (rule.rule === 'autoregression') path.order = [];
+  const window = new UpdatedLeastSquares(k);
+  const cumulated = new Float64Array(k);
+  for (let s = firstRow; s < first; s++) window.add(rows[s]!, data.growth[s]!);
+
+  for (let t = first; t < data.length; t++) {
+    if (t > first) {
+      window.add(rows[t - 1]!, data.growth[t - 1]!);
+      if (kind === 'rolling') {
+        const oldest = t - 1 - length;
+        window.remove(rows[oldest]!, data.growth[oldest]!);
+        if (!window.accurate) refactor(window, rows, data.growth, oldest + 1, t);
+      }
+    }
+    if (window.rankDeficient) throw rankDeficient(data, t);
+    const x = rows[t]!;
+    const order = chooses ? leastInformation(window, fixed.length, largest) : largest;
+    const used = fixed.length + order;
+    const standardised = window.standardise(x);
+    let ssr = window.ssr;
+    for (let i = used; i < k; i++) ssr += window.component(i) * window.component(i);
+    let forecast = 0;
+    let leverage = 0;
+    for (let i = 0; i < used; i++) {
+      forecast += standardised[i]! * window.component(i);
+      leverage += standardised[i]! * standardised[i]!;
+    }
+    for (let j = 0; j < k; j++) cumulated[j] = x[j]! + persistence * cumulated[j]!;
+    const spread = persistence === 0 ? standardised : window.standardise(cumulated);
+    let pathLeverage = 0;
+    for (let i = 0; i < used; i++) pathLeverage += spread[i]! * spread[i]!;
+
+    const variance = ssr / (window.observations - used);
+    const i = t - first;
+    path.expected[i] = forecast;
+    path.surprise[i] = data.growth[t]! - forecast;
+    path.forecastError[i] = Math.sqrt(variance) * Math.sqrt(1 + leverage);
+    path.parameterVariance[i] = variance * leverage;
+    path.pathVariance[i] = variance * pathLeverage;
+    path.order?.push(order);
+  }
+  return path;
+}
+
+/** Order 0…P of least BIC = n·ln(SSR/n) + k·ln n on the window's rows; ties to the smaller. */
+function leastInformation(window: UpdatedLeastSquares, fixed: number, largest: number): number {
+  const n = window.observations;
+  const penalty = ln(n);
+  let ssr = window.ssr;
+  let best = largest;
+  let least = Infinity;
+  for (let order = largest; order >= 0; order--) {
+    const criterion = n * ln(ssr / n) + (fixed + order) * penalty;
+    if (criterion <= least) {
+      least = criterion;
+      best = order;
+    }
+    if (order > 0) {
+      const component = window.component(fixed + order - 1);
+      ssr += component * component;
+    }
+  }
+  return best;
+}
+
+function refactor(
+  window: UpdatedLeastSquares,
+  rows: Float64Array[],
+  growth: Float64Array,
+  from: number,
+  to: number,
+): void {
+  window.clear();
+  for (let s = from; s < to; s++) window.add(rows[s]!, growth[s]!);
+}
+
+function transpose(columns: Float64Array[], length: number): Float64Array[] {
+  return Array.from({ length }, (_, t) => Float64Array.from(columns, (column) => column[t]!));
+}
+
+/** The refusal where the series has fewer levels than the first surprise needs. */
+export function tooShort(levels: number, needed: number): RefusedError {
+  return new RefusedError([
+    {
+      pointer: '/money/values',
+      message: `The money series has ${levels} ${levels === 1 ? 'level' : 'levels'}, but this rule and window need at least ${needed} before there is a first surprise. Load a longer series or shorten the window.`,
+    },
+  ]);
+}
+
+function rankDeficient(data: Data, t: number): RefusedError {
+  const period = formatPeriod({ frequency: data.frequency, index: data.start + t });
+  return new RefusedError([
+    {
+      pointer: '/money/values',
+      period,
+      message: `The expectation for ${period} cannot be computed: in the periods the rule learns from, money growth varies too little to tell its regressors apart. Use a longer window, a lower order or no seasonal indicators.`,
+    },
+  ]);
+}
