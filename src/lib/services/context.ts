@@ -17,6 +17,8 @@ export type Actor =
 export interface ServiceContext {
   db: Db;
   now: () => Date;
+  /** Set where `now` is not the real clock (the seed's stepped one): every audit row then says so. */
+  clockNote?: 'stepped';
   actor: Actor;
   store: ArtefactStore;
   workers: Workers;
