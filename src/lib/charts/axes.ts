@@ -72,12 +72,12 @@ export function yearTicks(periods: string[], step: number): YearTick[] {
   return ticks;
 }
 
-/** How many of the last periods a plot `plotWidth` px wide shows: whole years, with bars wide enough to tell apart. */
-export function periodsShown(periods: string[], plotWidth: number): number {
+/** How many of the last periods a chart `width` px wide shows: whole years, with bars wide enough to tell apart. */
+export function periodsShown(periods: string[], width: number): number {
   const last = periods.at(-1);
   if (last === undefined) return 0;
   const perYear = PERIODS_A_YEAR[parsePeriod(last).frequency];
-  const fitting = Math.floor(plotWidth / 12.5);
+  const fitting = Math.floor(width / 14.5);
   return Math.min(periods.length, Math.max(perYear, fitting - (fitting % perYear)));
 }
 

@@ -11,8 +11,8 @@ export interface ExplainerChartsOptions extends Omit<GapChartOptions, 'data' | '
 }
 
 /**
- * The surprise and the gap side by side or one above the other, each `width` px wide, over the same periods,
- * with equal pixels per unit and the datum at the same height.
+ * The surprise and the gap, each `width` px wide, over the same periods and with equal pixels per unit. From
+ * 480 px on they may stand side by side: their datums are at the same height.
  */
 export function explainerCharts(options: ExplainerChartsOptions): { surprise: Chart; gap: Chart } {
   const { data, width, rejected, idPrefix } = options;

@@ -31,17 +31,21 @@ function roundsToZero(value: number, places: number): boolean {
 
 /**
  * A figure that always shows its sign (+ or U+2212), and none where it rounds to zero.
- * `value` in any unit; null or not finite gives an en dash.
+ * `value` in any unit; null, missing or not finite gives an en dash.
  */
-export function signed(value: number | null, places: number, options: FigureOptions = {}): string {
-  if (value === null || !Number.isFinite(value)) return noFigure;
+export function signed(
+  value: number | null | undefined,
+  places: number,
+  options: FigureOptions = {},
+): string {
+  if (value === null || value === undefined || !Number.isFinite(value)) return noFigure;
   if (roundsToZero(value, places)) return digits(0, places, options);
   return (value > 0 ? '+' : minus) + digits(value, places, options);
 }
 
-/** A figure with a sign (U+2212) only where it is below zero; null or not finite gives an en dash. */
+/** A figure with a sign (U+2212) only where it is below zero; null, missing or not finite gives an en dash. */
 export function unsigned(
-  value: number | null,
+  value: number | null | undefined,
   places: number,
   options: FigureOptions = {},
 ): string {
@@ -49,22 +53,31 @@ export function unsigned(
 }
 
 /** A money surprise in pp (log points): "+0.84", "−0.71", "0.00". */
-export function surpriseFigure(value: number | null, options: FigureOptions = {}): string {
+export function surpriseFigure(
+  value: number | null | undefined,
+  options: FigureOptions = {},
+): string {
   return signed(value, 2, options);
 }
 
 /** An implied output gap or an end of its band, in per cent of output: "+0.6". */
-export function gapFigure(value: number | null, options: FigureOptions = {}): string {
+export function gapFigure(value: number | null | undefined, options: FigureOptions = {}): string {
   return signed(value, 1, options);
 }
 
 /** A standardised surprise, in standard deviations: "+1.9". */
-export function standardisedFigure(value: number | null, options: FigureOptions = {}): string {
+export function standardisedFigure(
+  value: number | null | undefined,
+  options: FigureOptions = {},
+): string {
   return signed(value, 1, options);
 }
 
 /** A part of the inflation accounting, in log points: "+0.27". */
-export function accountingFigure(value: number | null, options: FigureOptions = {}): string {
+export function accountingFigure(
+  value: number | null | undefined,
+  options: FigureOptions = {},
+): string {
   return signed(value, 2, options);
 }
 
@@ -74,8 +87,11 @@ export function growthPercent(logPoints: number): number {
 }
 
 /** Growth of money or prices, from log points, printed in per cent: "1.15", "−0.32". */
-export function growthFigure(logPoints: number | null, options: FigureOptions = {}): string {
-  return unsigned(logPoints === null ? null : growthPercent(logPoints), 2, options);
+export function growthFigure(
+  logPoints: number | null | undefined,
+  options: FigureOptions = {},
+): string {
+  return unsigned(typeof logPoints === 'number' ? growthPercent(logPoints) : null, 2, options);
 }
 
 /** Two ends of a range: "+0.2 to +1.0"; an en dash where either is missing. */
@@ -96,8 +112,8 @@ export function withUnit(figure: string, unit: Unit): string {
 }
 
 /** On which side of the datum a figure lies; below .05 in size it is level (and so is none at all). */
-export function side(value: number | null): Side {
-  if (value === null || !(Math.abs(value) >= levelBelow)) return 'level';
+export function side(value: number | null | undefined): Side {
+  if (value === null || value === undefined || !(Math.abs(value) >= levelBelow)) return 'level';
   return value > 0 ? 'above' : 'below';
 }
 export { monthName, periodLabel, periodNoun } from './periodLabels.ts';

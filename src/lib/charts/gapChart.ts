@@ -30,7 +30,7 @@ const marginRight = 78;
 
 /** The last periods of `data` that a chart of `width` px shows; nothing where no gap is published. */
 export function shownGaps(data: GapData, width: number, count?: number): GapData {
-  const shown = count ?? periodsShown(data.periods, width - marginRight - 40);
+  const shown = count ?? periodsShown(data.periods, width);
   const from = Math.max(0, data.periods.length - Math.max(shown, 1));
   return {
     periods: data.periods.slice(from),
@@ -57,7 +57,7 @@ export function gapChart(options: GapChartOptions): Chart {
   const area = panel({ chart: options, periods: shown.periods, domain, marginRight });
   const last = lastGap(shown);
   const { band, pieces } = gapLines(shown, palette);
-  const edge = { x: 'x', z: 'run', stroke: palette.rule2 } as const;
+  const edge = { x: 'x', z: 'run', stroke: palette.rule2, strokeWidth: 1 } as const;
   const marks: Plot.Markish[] = [
     ...(rejected
       ? []
@@ -127,29 +127,42 @@ function lastMarks(area: Panel, last: LastGap, options: GapChartOptions): Plot.M
 function lastLabels(area: Panel, last: LastGap, options: GapChartOptions): Label[] {
   const x = area.right + 12;
   const { ink2 } = options.palette;
-  const drawsBand = !options.rejected && last.band !== null;
-  const [lower, upper] = last.band ?? [last.value, last.value];
-  const wanted = drawsBand
-    ? [area.y(upper), area.y(last.value), area.y(lower)]
-    : [area.y(last.value)];
-  const [first, second, third] = spread(wanted, 19);
   const value: Label = {
     text: withUnit(gapFigure(last.value, options), '%'),
     x,
-    y: baselineAt(drawsBand ? second! : first!, valueSize),
+    y: 0,
     fill: sideColour(last.value, options),
     size: valueSize,
     weight: 600,
   };
-  if (!drawsBand) {
-    const note = { text: 'assumed', x, y: value.y + 17, fill: ink2 };
-    return options.rejected ? [value, note] : [value];
+  if (options.rejected) {
+    const centre = area.y(last.value);
+    const clear =
+      last.value < 0 ? Math.max(centre, area.datumY + 10) : Math.min(centre, area.datumY - 27);
+    value.y = baselineAt(clear, valueSize);
+    return [value, { text: 'assumed', x, y: value.y + 17, fill: ink2 }];
   }
+  if (last.band === null) {
+    const [centre] = clearOfDatum(area, [last.value]);
+    return [{ ...value, y: baselineAt(centre!, valueSize) }];
+  }
+  const [lower, upper] = last.band;
+  const centres = clearOfDatum(area, [upper, last.value, lower]);
   return [
-    { text: gapFigure(upper, options), x, y: baselineAt(first!), fill: ink2 },
-    value,
-    { text: gapFigure(lower, options), x, y: baselineAt(third!), fill: ink2 },
+    { text: gapFigure(upper, options), x, y: baselineAt(centres[0]!), fill: ink2 },
+    { ...value, y: baselineAt(centres[1]!, valueSize) },
+    { text: gapFigure(lower, options), x, y: baselineAt(centres[2]!), fill: ink2 },
   ];
+}
+
+/** Centres of labels for `values` (descending), apart from each other and never across the datum. */
+function clearOfDatum(area: Panel, values: number[]): number[] {
+  const gap = 19;
+  const above = spread(values.filter((value) => value >= 0).map(area.y), gap);
+  const below = spread(values.filter((value) => value < 0).map(area.y), gap);
+  const up = Math.max(0, Math.max(...above) - (area.datumY - 10));
+  const down = Math.max(0, area.datumY + 10 - Math.min(...below));
+  return [...above.map((centre) => centre - up), ...below.map((centre) => centre + down)];
 }
 
 function describe(options: GapChartOptions, shown: GapData, last: LastGap | null): string {

@@ -33,7 +33,7 @@ export function surpriseMargin(width: number): number {
 
 /** The last periods of `data` that a chart of `width` px shows. */
 export function shownSurprises(data: SurpriseData, width: number, count?: number): SurpriseData {
-  const shown = count ?? periodsShown(data.periods, width - surpriseMargin(width) - 40);
+  const shown = count ?? periodsShown(data.periods, width);
   const from = Math.max(0, data.periods.length - Math.max(shown, 1));
   return {
     periods: data.periods.slice(from),

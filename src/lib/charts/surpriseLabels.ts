@@ -1,11 +1,12 @@
 import { side, surpriseFigure, withUnit } from './figures.ts';
 import { labelBox, overlap, valueSize } from './labels.ts';
-import type { Label } from './labels.ts';
+import type { Box, Label } from './labels.ts';
 import { narrowBelow } from './panel.ts';
 import type { Panel } from './panel.ts';
 import { periodLabel, periodNoun } from './periodLabels.ts';
 import type { SurpriseData } from './surpriseData.ts';
 import { barShare } from './surpriseMarks.ts';
+import { textWidth } from './textWidth.ts';
 
 /** Room between a mark and what names it, in px. */
 const clear = 6;
@@ -14,7 +15,7 @@ function figure(panel: Panel, value: number): string {
   return withUnit(surpriseFigure(value, panel.chart), 'pp');
 }
 
-/** How far bars (and, if asked, the range) reach from the datum between two x, in px; up is negative. */
+/** How far bars reach from the datum between two x, in px; up is negative. */
 function reach(panel: Panel, data: SurpriseData, left: number, right: number, up: boolean): number {
   let farthest = panel.datumY;
   for (const [i, value] of data.surprise.entries()) {
@@ -37,8 +38,10 @@ export function latestLabels(panel: Panel, data: SurpriseData): Label[] {
   const up = value >= 0;
   if (width < narrowBelow) {
     const right = panel.right;
-    const left = right - 76;
-    const end = reach(panel, data, left, right, up);
+    const left = right - textWidth(text, valueSize, 600) - clear;
+    const bars = reach(panel, data, left, right, up);
+    const edge = rangeEdge(panel, data, left, right, up);
+    const end = up ? Math.min(bars, edge) : Math.max(bars, edge);
     const y = up ? end - clear - 21 : end + clear + 16;
     return [
       { text, x: right, y, fill, anchor: 'end', size: valueSize, weight: 600, halo: palette.paper },
@@ -92,7 +95,7 @@ export function annotations(panel: Panel, data: SurpriseData, taken: Label[]): L
   return labels;
 }
 
-/** What the shading is and how often it held, where no bar, edge or other label reaches. */
+/** What the shading is and how often it held, where no bar, edge or other label reaches; in two lines if need be. */
 export function rangeLabels(
   panel: Panel,
   data: SurpriseData,
@@ -102,33 +105,40 @@ export function rangeLabels(
   const last = data.forecast_se.findLastIndex((error) => error !== null);
   if (last < 0 || share === null) return [];
   const size = figure(panel, data.forecast_se[last]!).replace('+', '±');
+  const first = `typical range, now ${size};`;
   const held = `${Math.round(100 * share)}% of ${periodNoun(data.periods[last]!)}s inside`;
-  const text = `typical range, now ${size}; ${held}`;
   const boxes = taken.map(labelBox);
-  let best: { label: Label; distance: number } | undefined;
+  const inOne = placeLines(panel, data, [`${first} ${held}`], boxes);
+  return inOne.length > 0 ? inOne : placeLines(panel, data, [first, held], boxes);
+}
+
+/** The place for lines of text that is nearest to the typical range; none where there is no room. */
+function placeLines(panel: Panel, data: SurpriseData, lines: string[], taken: Box[]): Label[] {
+  const { ink2: fill, paper: halo } = panel.chart.palette;
+  const lineHeight = 16;
+  let best: Label[] = [];
+  let nearest = Infinity;
   for (const up of [true, false]) {
     for (let i = 0; i < data.periods.length; i += 1) {
-      const label: Label = {
-        text,
-        x: panel.x(i) + 2,
-        y: 0,
-        fill: panel.chart.palette.ink2,
-        halo: panel.chart.palette.paper,
-      };
-      const { left, right } = labelBox(label);
+      const labels = lines.map((text): Label => ({ text, x: panel.x(i) + 2, y: 0, fill, halo }));
+      const right = Math.max(...labels.map((label) => labelBox(label).right));
       if (right > panel.right) break;
-      const edge = rangeEdge(panel, data, left, right, up);
-      const bars = reach(panel, data, left - 2, right + 2, up);
+      const edge = rangeEdge(panel, data, panel.x(i), right, up);
+      const bars = reach(panel, data, panel.x(i), right + 2, up);
       const end = up ? Math.min(edge, bars) : Math.max(edge, bars);
-      label.y = up ? end - clear : end + clear + 10;
-      const box = labelBox(label);
-      if (box.top < 2 || box.bottom > panel.bottom + 12) continue;
-      if (boxes.some((other) => overlap(box, other, clear))) continue;
-      const distance = Math.abs(end - edge);
-      if (best === undefined || distance < best.distance) best = { label, distance };
+      const top = up ? end - clear - lineHeight * (lines.length - 1) : end + clear + 10;
+      labels.forEach((label, line) => (label.y = top + lineHeight * line));
+      const fits = labels.map(labelBox).every((box) => {
+        const inside = box.top > 2 && box.bottom < panel.bottom + 14;
+        return inside && !taken.some((other) => overlap(box, other, clear));
+      });
+      if (fits && Math.abs(end - edge) < nearest) {
+        best = labels;
+        nearest = Math.abs(end - edge);
+      }
     }
   }
-  return best === undefined ? [] : [best.label];
+  return best;
 }
 
 function rangeEdge(

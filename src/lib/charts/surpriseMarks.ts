@@ -60,7 +60,13 @@ export function rangeMarks(
     if (next === null) corners.push({ x: i + 1, error, run });
   }
   const lower = (corner: Corner) => -corner.error;
-  const edge = { x: 'x', z: 'run', curve: 'step-after', stroke: palette.rule2 } as const;
+  const edge = {
+    x: 'x',
+    z: 'run',
+    curve: 'step-after',
+    stroke: palette.rule2,
+    strokeWidth: 1,
+  } as const;
   return [
     Plot.areaY(corners, {
       x: 'x',

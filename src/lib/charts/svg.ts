@@ -38,6 +38,8 @@ export interface Drawing {
   labels: Label[];
   /** Markup for `<defs>`. */
   defs?: string;
+  /** Markup drawn over everything. */
+  over?: string;
 }
 
 /** Draws Plot's marks with our labels over them, as the markup of an `<svg>` element. */
@@ -48,7 +50,7 @@ export function drawSvg(drawing: Drawing): string {
   return (
     `<svg xmlns="${namespace}" role="img" aria-label="${escape(label)}" width="${width}" height="${height}"` +
     ` viewBox="0 0 ${width} ${height}" font-family="${sans}" font-size="${labelSize}">` +
-    `${defs}${drawMarks(drawing)}${labels.map(labelMarkup).join('')}</svg>`
+    `${defs}${drawMarks(drawing)}${labels.map(labelMarkup).join('')}${drawing.over ?? ''}</svg>`
   );
 }
 
