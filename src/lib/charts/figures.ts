@@ -116,4 +116,9 @@ export function side(value: number | null | undefined): Side {
   if (value === null || value === undefined || !(Math.abs(value) >= levelBelow)) return 'level';
   return value > 0 ? 'above' : 'below';
 }
+/** Whether a figure printed with `places` decimals hangs from the datum: below 0; what prints as zero stands. */
+export function hangs(value: number | null | undefined, places: number): boolean {
+  return signed(value, places).startsWith(minus);
+}
+
 export { monthName, periodLabel, periodNoun } from './periodLabels.ts';

@@ -1,7 +1,8 @@
 import * as Plot from '@observablehq/plot';
 import type { Values } from '../econ/types.ts';
 import { tickStep, valueTicks } from './axes.ts';
-import { side, standardisedFigure, surpriseFigure, withUnit } from './figures.ts';
+import { minus, side, standardisedFigure, surpriseFigure, withUnit } from './figures.ts';
+import type { Side } from './figures.ts';
 import { baselineAt } from './labels.ts';
 import type { Label } from './labels.ts';
 import { pathMark } from './panel.ts';
@@ -17,16 +18,21 @@ export interface GaugeScale {
   domain: number;
 }
 
-/** One economy's surprise, in the scale's unit. */
+/** Arrays over consecutive periods of which the last is the one shown; a whole result fits. */
+export interface GaugeHistory {
+  /** Log points. */
+  surprise: Values;
+  /** Log points. */
+  forecast_se: Values;
+  standardised_surprise: Values;
+}
+
 export interface GaugeData {
   economy: string;
   /** The period as readers see it. */
   periodLabel: string;
-  value: number | null;
-  /** Half the typical range: the forecast standard error, or 1 in standard deviations. */
-  typical: number | null;
-  /** The twelve periods before. */
-  previous: Values;
+  /** Null where the period is not out: the scale stays empty. */
+  history: GaugeHistory | null;
 }
 
 export interface GaugeOptions extends ChartOptions {
@@ -36,13 +42,6 @@ export interface GaugeOptions extends ChartOptions {
   scaleHeight?: number;
   /** Whether the ticks are labelled, in the 44 px left of the scale: for the first gauge of a row without a key. */
   labelled?: boolean;
-}
-
-/** What decides the shared scale: one entry an economy, arrays in pp over the periods shown. */
-export interface GaugeHistory {
-  surprise: Values;
-  forecast_se: Values;
-  standardised_surprise: Values;
 }
 
 /**
@@ -87,27 +86,57 @@ export function gauge(options: GaugeOptions): Chart {
   const left = labelled ? scaleLeft + 44 : scaleLeft;
   const frame = gaugeFrame(scale, scaleHeight);
   const { y, datumY, height } = frame;
-  const where = side(data.value);
-  const colour = where === 'level' ? palette.ink : palette[where];
+  const reading = read(data.history, scale);
+  const colour = reading.side === 'level' ? palette.ink : palette[reading.side];
   const size = figureSize(width - left);
   const labels: Label[] = labelled ? tickLabels(options, scale, left - scaleLeft - 4, y) : [];
   const svg = drawSvg({
     chart: options,
     height,
-    label: describe(options),
+    label: describe(options, reading),
     x: { type: 'identity' },
     y: { type: 'linear', domain: [-scale.domain, scale.domain], range: [frame.bottom, frame.top] },
     marks: [
-      ...typicalMarks(data.typical, left, options),
+      ...typicalMarks(reading.typical, left, options),
       pathMark(scalePath(scale, left, frame), palette.rule2),
-      ...previousMarks(finite(data.previous), left, options),
+      ...previousMarks(reading.previous, left, options),
       Plot.ruleY([0], { stroke: palette.ink }),
-      ...(data.value === null ? [] : [needle(y(data.value), datumY, left, colour)]),
+      ...(reading.value === null ? [] : [needle(y(reading.value), datumY, left, colour)]),
     ],
     labels,
-    over: size === null ? '' : figureText(options, left + 43, size, colour, frame),
+    over:
+      size === null || reading.value === null
+        ? ''
+        : figureText(
+            figure(reading.value, options),
+            reading.value,
+            { x: left + 43, size, fill: colour },
+            frame,
+          ),
   });
   return { svg, width, height, datumY };
+}
+
+interface Reading {
+  /** In the scale's unit. */
+  value: number | null;
+  side: Side;
+  /** Half the typical range: the forecast standard error, or one standard deviation. */
+  typical: number | null;
+  previous: number[];
+}
+
+function read(history: GaugeHistory | null, { unit }: GaugeScale): Reading {
+  if (history === null) return { value: null, side: 'level', typical: null, previous: [] };
+  const values = unit === 'pp' ? history.surprise : history.standardised_surprise;
+  const value = values.at(-1) ?? null;
+  const error = history.forecast_se.at(-1) ?? null;
+  return {
+    value,
+    side: side(history.surprise.at(-1)),
+    typical: unit === 'pp' || error === null ? error : 1,
+    previous: finite(values.slice(-13, -1)),
+  };
 }
 
 export interface GaugeFrame {
@@ -201,43 +230,36 @@ function figureSize(room: number): number | null {
   return room >= 145 ? 38 : room >= 112 ? 26 : null;
 }
 
-function gaugeFigure({ data, scale, decimalMark }: GaugeOptions): string {
-  const options = decimalMark === undefined ? {} : { decimalMark };
-  return scale.unit === 'pp'
-    ? surpriseFigure(data.value, options)
-    : standardisedFigure(data.value, options);
+function figure(value: number, { scale, decimalMark }: GaugeOptions): string {
+  const print = scale.unit === 'pp' ? surpriseFigure : standardisedFigure;
+  return print(value, decimalMark === undefined ? {} : { decimalMark });
 }
 
 /** The figure beside the cap; never across the datum, and inside the chart. */
 function figureText(
-  options: GaugeOptions,
-  x: number,
-  size: number,
-  fill: string,
+  text: string,
+  value: number,
+  { x, size, fill }: { x: number; size: number; fill: string },
   { datumY, height, y }: GaugeFrame,
 ): string {
-  const { value } = options.data;
   const capHeight = 0.75 * size;
-  const centre = y(value ?? 0) + capHeight / 2;
-  const baseline =
-    value === null || value >= 0
-      ? Math.max(Math.min(centre, datumY - 8), capHeight + 1)
-      : Math.min(Math.max(centre, datumY + 8 + capHeight), height - 2);
+  const centre = y(value) + capHeight / 2;
+  const baseline = text.startsWith(minus)
+    ? Math.min(Math.max(centre, datumY + 8 + capHeight), height - 2)
+    : Math.max(Math.min(centre, datumY - 8), capHeight + 1);
   return (
     `<text x="${x}" y="${Math.round(baseline * 100) / 100}" fill="${fill}" font-family="${serif}" ` +
-    `font-size="${size}" font-weight="300">${escape(gaugeFigure(options))}</text>`
+    `font-size="${size}" font-weight="300">${escape(text)}</text>`
   );
 }
 
-function describe(options: GaugeOptions): string {
+function describe(options: GaugeOptions, reading: Reading): string {
   const { data, scale } = options;
   const title = `${data.economy}, ${data.periodLabel}: money surprise`;
-  if (data.value === null) return `${title} not yet published.`;
-  const where = side(data.value);
-  const relation = where === 'level' ? 'level' : `${where} expectation`;
-  const figure = withUnit(gaugeFigure(options), scale.unit);
-  if (data.typical === null) return `${title} ${figure}, ${relation}.`;
-  const places = scale.unit === 'pp' ? surpriseFigure : standardisedFigure;
-  const typical = withUnit(places(data.typical, options).replace('+', '±'), scale.unit);
-  return `${title} ${figure}, ${relation}; typical range ${typical}.`;
+  if (reading.value === null) return `${title} not yet published.`;
+  const relation = reading.side === 'level' ? 'level' : `${reading.side} expectation`;
+  const value = withUnit(figure(reading.value, options), scale.unit);
+  if (reading.typical === null) return `${title} ${value}, ${relation}.`;
+  const typical = withUnit(figure(reading.typical, options).replace('+', '±'), scale.unit);
+  return `${title} ${value}, ${relation}; typical range ${typical}.`;
 }
