@@ -23,28 +23,9 @@ import { warningsOf } from './warnings.ts';
  */
 export function compute(request: ComputeRequest): ComputeResult {
   const parsed = parseRequest(request);
-  refuseUncomputed(parsed);
   const result = assemble(parsed, prepare(parsed));
   refuseInfinite(result);
   return result;
-}
-
-/** Names of what a later step of the method brings, so that it is refused rather than computed wrongly. */
-function refuseUncomputed(request: ComputeRequest): void {
-  const faults: Fault[] = [];
-  const { expectation, slope, gap } = request;
-  const refuse = (pointer: string, what: string) =>
-    faults.push({ pointer, message: `${what} cannot be computed yet.` });
-  if (!isRegression(expectation)) refuse('/expectation/rule', `The rule ${expectation.rule}`);
-  else if (expectation.rule === 'autoregression' && typeof expectation.order !== 'number') {
-    refuse('/expectation/order', 'An order chosen by BIC');
-  }
-  if (expectation.seasonal === 'dummies') refuse('/expectation/seasonal', 'Seasonal indicators');
-  if (slope.method === 'structural' || slope.method === 'activity') {
-    refuse('/slope/method', `The slope method ${slope.method}`);
-  }
-  if (gap?.persistence === 'estimated') refuse('/gap/persistence', 'Estimated persistence');
-  if (faults.length > 0) throw new RefusedError(faults);
 }
 
 function assemble(request: ComputeRequest, data: Data): ComputeResult {

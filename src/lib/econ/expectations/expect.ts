@@ -1,8 +1,9 @@
-import { RefusedError } from '../refusal.ts';
 import type { Data } from '../series.ts';
 import type { Expectation } from '../types.ts';
+import { adaptiveExpectation } from './adaptive.ts';
 import type { ExpectationPath } from './expectation.ts';
 import { regressionExpectation, type RegressionRule } from './regression.ts';
+import { surveyExpectation } from './survey.ts';
 
 /** Whether a rule learns by least squares, so that the slope's equations hold growth itself and no surprise. */
 export function isRegression(rule: Expectation): rule is RegressionRule {
@@ -16,7 +17,5 @@ export function isRegression(rule: Expectation): rule is RegressionRule {
  */
 export function expect(data: Data, rule: Expectation, persistence: number): ExpectationPath {
   if (isRegression(rule)) return regressionExpectation(data, rule, persistence);
-  throw new RefusedError([
-    { pointer: '/expectation/rule', message: `The rule "${rule.rule}" cannot be computed yet.` },
-  ]);
+  return rule.rule === 'adaptive' ? adaptiveExpectation(data, rule) : surveyExpectation(data);
 }
