@@ -2,6 +2,8 @@ import { expect, isRegression } from './expectations/expect.ts';
 import type { ExpectationPath } from './expectations/expectation.ts';
 import { impliedGap } from './gap.ts';
 import { accountForInflation } from './inflation.ts';
+import { benchmarks } from './benchmarks.ts';
+import { diagnose } from './diagnostics/diagnostics.ts';
 import { neutrality } from './diagnostics/neutrality.ts';
 import { formatPeriod } from './periods.ts';
 import { RefusedError } from './refusal.ts';
@@ -72,15 +74,8 @@ function assemble(request: ComputeRequest, data: Data): ComputeResult {
     gap_lower: implied?.lower ?? null,
     gap_upper: implied?.upper ?? null,
     inflation: accounting?.inflation ?? null,
-    diagnostics: {
-      surprise: null,
-      ljung_box: null,
-      jarque_bera: null,
-      adf_money: null,
-      adf_growth: null,
-      neutrality: neutral,
-    },
-    benchmarks: null,
+    diagnostics: diagnose(data, path, neutral),
+    benchmarks: request.activity ? benchmarks(request.activity, data.frequency) : null,
     warnings: warningsOf(request, result, neutral),
   };
 }
