@@ -25,6 +25,8 @@ const PROGRAMS = `/usr/lib/postgresql/${VERSION}/bin`;
 /** Root's home cannot be traversed by the server's unprivileged user; this place can. */
 const ROOT_CLUSTERS = '/var/lib/slackwater';
 const NAME = 'slackwater';
+/** A process that is being stopped needs a moment to let go. */
+const LOCK_TRIES = 8;
 
 /** Why the private cluster does not run, as one sentence for the person who started it. */
 export class ClusterError extends Error {
@@ -175,21 +177,25 @@ async function lock(path: string, dataDir: string): Promise<() => Promise<void>>
   const own = `${path}.${process.pid}.${randomBytes(4).toString('hex')}`;
   await writeFile(own, `${process.pid} ${await startOf(process.pid)}`);
   try {
-    for (let attempt = 0; attempt < 5; attempt += 1) {
+    for (let attempt = 1; ; attempt += 1) {
       // link, unlike a write, makes the file with its content in one step and fails where one is.
-      const taken = await link(own, path).then(
-        () => true,
-        () => false,
+      const fault = await link(own, path).then(
+        () => null,
+        (error: NodeJS.ErrnoException) => error,
       );
-      if (taken) return () => rm(path, { force: true });
-      if (await holder(path)) break;
+      if (fault === null) return () => rm(path, { force: true });
+      if (fault.code !== 'EEXIST') throw fault;
+      if (await holder(path)) {
+        if (attempt === LOCK_TRIES) throw inUse(dataDir);
+        await sleep(250);
+        continue;
+      }
       const stale = `${own}.stale`;
       await rename(path, stale).catch(() => {});
       // Another starter may have replaced the dead lock between the look and the rename: give it back.
       if (await holder(stale)) await link(stale, path).catch(() => {});
       await rm(stale, { force: true });
     }
-    throw inUse(dataDir);
   } finally {
     await rm(own, { force: true });
   }
