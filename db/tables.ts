@@ -138,7 +138,7 @@ export interface PublishedTable {
 }
 
 export interface PublicationTable {
-  only: Generated<boolean>;
+  singleton: Generated<boolean>;
   generation: Bigint;
 }
 
@@ -164,7 +164,7 @@ export interface AuditTable {
 }
 
 export interface DemoSeedTable {
-  only: Generated<boolean>;
+  singleton: Generated<boolean>;
   started_at: Time;
   finished_at: Time | null;
 }

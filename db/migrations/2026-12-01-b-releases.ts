@@ -156,7 +156,7 @@ export async function up(db: Kysely<any>): Promise<void> {
 
     -- raised by every change of published, so that a process sees with one look whether it is behind
     create table publication (
-      only boolean primary key default true check (only),
+      singleton boolean primary key default true check (singleton),
       generation bigint not null
     );
     insert into publication (generation) values (0);
@@ -186,7 +186,7 @@ export async function up(db: Kysely<any>): Promise<void> {
 
     -- a first seeding that was broken off is begun again from an empty database
     create table demo_seed (
-      only boolean primary key default true check (only),
+      singleton boolean primary key default true check (singleton),
       started_at timestamptz not null,
       finished_at timestamptz
     );

@@ -1,0 +1,158 @@
+import { afterEach, beforeEach, describe, expect, it } from 'vitest';
+import { bringUpToDate, isBehind, redraw, takeOut } from '../../src/lib/publication/moments.ts';
+import { PublishedPages } from '../../src/lib/publication/serve.ts';
+import { scene } from './scene.ts';
+
+type Scene = Awaited<ReturnType<typeof scene>>;
+let stage: Scene;
+
+beforeEach(async () => {
+  stage = await scene();
+});
+
+/** What a process that starts now would answer, and one that was there before. */
+async function process() {
+  const pages = new PublishedPages(stage.ctx.db, { now: stage.ctx.now }, stage.ctx.store);
+  await pages.sync();
+  return {
+    pages,
+    async text(address: string): Promise<string | null> {
+      const answer = pages.answer(address);
+      if (!answer) return null;
+      const bytes = await pages.bytes(answer.row.artefact_hash, 'identity');
+      return new TextDecoder().decode(bytes!);
+    },
+  };
+}
+
+function at(time: string): void {
+  stage.clock.at = new Date(time);
+}
+
+describe('a coming moment', () => {
+  it('shows nothing before its second and everything from it, in every process, with no work in between', async () => {
+    const early = await process();
+    await stage.schedule('2031-08', '2031-10-01T08:00:00Z');
+    await bringUpToDate(stage.ctx);
+    await early.pages.sync();
+    const late = await process();
+
+    at('2031-10-01T07:59:59.999Z');
+    for (const one of [early, late]) {
+      expect(await one.text('/releases/XTA/2031-08/')).toBeNull();
+      expect(await one.text('/')).toBe('/: ');
+    }
+    at('2031-10-01T08:00:00.000Z');
+    for (const one of [early, late]) {
+      expect(await one.text('/releases/XTA/2031-08/')).toBe('/releases/XTA/2031-08/: 2031-08');
+      expect(await one.text('/')).toBe('/: 2031-08');
+    }
+  });
+
+  it('is drawn on top of the one before it', async () => {
+    await stage.schedule('2031-08', '2031-10-01T08:00:00Z');
+    await bringUpToDate(stage.ctx);
+    await stage.schedule('2031-07', '2031-10-01T07:30:00Z');
+    await bringUpToDate(stage.ctx);
+    const one = await process();
+    at('2031-10-01T07:30:00Z');
+    expect(await one.text('/')).toBe('/: 2031-07');
+    at('2031-10-01T08:00:00Z');
+    expect(await one.text('/')).toBe('/: 2031-07 2031-08');
+  });
+
+  it('loses a release that is taken out, and the later ones are drawn without it', async () => {
+    await stage.schedule('2031-07', '2031-10-01T07:30:00Z');
+    await stage.schedule('2031-08', '2031-10-01T08:00:00Z');
+    await bringUpToDate(stage.ctx);
+    const one = await process();
+    await stage.ctx.db.transaction().execute(async (db) => {
+      await db
+        .updateTable('release')
+        .set({ state: 'approved', scheduled_for: null })
+        .where('period', '=', '2031-07')
+        .execute();
+      await takeOut({ ...stage.ctx, db }, new Date('2031-10-01T07:30:00Z'));
+    });
+    await one.pages.sync();
+    at('2031-10-01T08:00:00Z');
+    // Between the two, the later moment does not count: it was drawn with what is gone.
+    expect(await one.text('/')).toBe('/: ');
+    at('2031-10-01T07:10:00Z');
+    expect(await isBehind(stage.ctx.db, stage.ctx.now())).toBe(true);
+    await bringUpToDate(stage.ctx);
+    await one.pages.sync();
+    at('2031-10-01T08:00:00Z');
+    expect(await one.text('/')).toBe('/: 2031-08');
+    expect(await one.text('/releases/XTA/2031-07/')).toBeNull();
+  });
+
+  it('changes nothing where a page cannot be drawn, and is found again', async () => {
+    await stage.schedule('2031-08', '2031-10-01T08:00:00Z');
+    const broken = {
+      ...stage.ctx,
+      workers: { ...stage.ctx.workers, page: () => Promise.reject(new Error('no page')) },
+    };
+    await expect(bringUpToDate(broken)).rejects.toThrow('no page');
+    expect(await isBehind(stage.ctx.db, stage.ctx.now())).toBe(true);
+    const rows = await stage.ctx.db.selectFrom('published').selectAll().execute();
+    expect(rows).toEqual([]);
+    await bringUpToDate(stage.ctx);
+    expect(await isBehind(stage.ctx.db, stage.ctx.now())).toBe(false);
+  });
+
+  it('never counts from a second that passed while it was drawn', async () => {
+    await stage.schedule('2031-08', '2031-10-01T08:00:00Z');
+    const slow = {
+      ...stage.ctx,
+      workers: {
+        ...stage.ctx.workers,
+        page: (address: string, view: { at: Date }) => {
+          at('2031-10-01T08:00:01Z');
+          return stage.ctx.workers.page(address, view);
+        },
+      },
+    };
+    await bringUpToDate(slow);
+    at('2031-10-01T09:00:00Z');
+    const one = await process();
+    expect(await one.text('/releases/XTA/2031-08/')).toBeNull();
+  });
+});
+
+describe('a vintage', () => {
+  it('is public from the second of the first release that freezes it, and not if that is taken out', async () => {
+    const publicFrom = async () =>
+      (await stage.ctx.db.selectFrom('vintage').select('public_from').executeTakeFirstOrThrow())
+        .public_from;
+    await stage.schedule('2031-08', '2031-10-01T08:00:00Z');
+    expect(await publicFrom()).toBeNull();
+    await bringUpToDate(stage.ctx);
+    expect(await publicFrom()).toEqual(new Date('2031-10-01T08:00:00Z'));
+    await stage.ctx.db.transaction().execute(async (db) => {
+      await db.updateTable('release').set({ state: 'approved', scheduled_for: null }).execute();
+      await takeOut({ ...stage.ctx, db }, new Date('2031-10-01T08:00:00Z'));
+    });
+    expect(await publicFrom()).toBeNull();
+  });
+});
+
+describe('another build', () => {
+  it('draws the pages in force and to come again, each at its own second', async () => {
+    await stage.schedule('2031-08', '2031-10-01T08:00:00Z');
+    await bringUpToDate(stage.ctx);
+    at('2031-10-01T07:01:00Z');
+    const before = await process();
+    expect(await redraw(stage.ctx)).toBe(0);
+    const next = { ...stage.ctx, build: 'two' };
+    expect(await redraw(next)).toBeGreaterThan(5);
+    await before.pages.sync();
+    expect(await before.text('/')).toBe('/: ');
+    at('2031-10-01T08:00:00Z');
+    expect(await before.text('/')).toBe('/: 2031-08');
+  });
+});
+
+afterEach(async () => {
+  await stage.end();
+});
