@@ -1,4 +1,4 @@
-import { noBreakSpace, range, signed, unsigned } from '../src/lib/charts/figures.ts';
+import { range, signed, unsigned } from '../src/lib/charts/figures.ts';
 
 /** A name as it stands first in a sentence: "The Brannoch Isles". */
 export function atStart(nameInText: string): string {
@@ -39,9 +39,9 @@ export function logPoints(value: number): string {
   return `${signed(value, 2)} log points`;
 }
 
-/** Both ends of a band in prose, kept on one line: "+0.2 to +1.0 per cent". */
+/** Both ends of a band in prose: "+0.2 to +1.0 per cent". */
 export function bandInWords(lower: number, upper: number): string {
-  return `${range(lower, upper).replaceAll(' ', noBreakSpace)} per cent`;
+  return `${range(lower, upper)} per cent`;
 }
 
 /** One of the forms, always the same for the same key. */
