@@ -88,7 +88,7 @@ export function seriesId(economy: string, concept: string, frequency: Frequency)
 }
 
 /** A row of `release_value`, without its release. Log points; null where a value does not exist. */
-export interface IndicatorValue {
+export interface ReleaseValue {
   indicator: string;
   period: string;
   value: number | null;
@@ -103,7 +103,7 @@ const REJECTION_LEVEL = 0.01;
  * Where neutrality is rejected at 1% the gap keeps its value and loses its band; without persistence it is the
  * output effect. An indicator that the result lacks altogether (no prices, outside the model) has no rows.
  */
-export function valuesOf(result: ComputeResult, request: ComputeRequest): IndicatorValue[] {
+export function valuesOf(result: ComputeResult, request: ComputeRequest): ReleaseValue[] {
   const { inflation } = result;
   const persistence = request.gap?.persistence ?? 'none';
   const gap = persistence === 'none' || persistence === 0 ? 'output_effect' : 'implied_gap';
