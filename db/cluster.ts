@@ -1,4 +1,4 @@
-import { execFile } from 'node:child_process';
+import { spawn } from 'node:child_process';
 import { createHash, randomBytes } from 'node:crypto';
 import { existsSync } from 'node:fs';
 import {
@@ -15,10 +15,7 @@ import {
 import { createServer } from 'node:net';
 import { join, resolve } from 'node:path';
 import { setTimeout as sleep } from 'node:timers/promises';
-import { promisify } from 'node:util';
 import pg from 'pg';
-
-const run = promisify(execFile);
 
 const VERSION = '15';
 const PROGRAMS = `/usr/lib/postgresql/${VERSION}/bin`;
@@ -201,13 +198,26 @@ async function lock(path: string, dataDir: string): Promise<() => Promise<void>>
   }
 }
 
-/** Runs one of PostgreSQL's programs under the cluster's account. */
-async function program(place: Place, name: string, args: string[]): Promise<void> {
-  await run(join(PROGRAMS, name), args, {
+/** Runs one of PostgreSQL's programs under the cluster's account; throws its last word. */
+function program(place: Place, name: string, args: string[]): Promise<void> {
+  const child = spawn(join(PROGRAMS, name), args, {
     // The account may not be able to read the directory we were started in.
     cwd: '/',
     env: { PATH: '/usr/bin:/bin', LC_ALL: 'C.UTF-8', TZ: 'UTC' },
+    // Ctrl-C on the terminal is for us; this program is let finish and its server then stopped.
+    detached: true,
+    stdio: ['ignore', 'ignore', 'pipe'],
     ...place.owner,
+  });
+  let spoken = '';
+  child.stderr.on('data', (chunk: Buffer) => (spoken += chunk.toString()));
+  return new Promise((done, fail) => {
+    child.once('error', fail);
+    child.once('close', (code) => {
+      const last = spoken.trim().split('\n').at(-1) || `it ended with code ${code}`;
+      if (code === 0) done();
+      else fail(new Error(`${name}: ${last.replace(`${name}: `, '')}`));
+    });
   });
 }
 
@@ -302,9 +312,11 @@ async function launch(place: Place, options: ClusterOptions): Promise<number> {
       ]);
       return port;
     } catch (error) {
-      // The port may have been taken meanwhile, or the last server's children may still be leaving.
       failure = error;
+      // The port may have been taken meanwhile, or the last server's children may still be leaving.
       await sleep(1_000);
+      const running = await runningPort(place);
+      if (running !== null) return running;
     }
   }
   throw new ClusterError(
@@ -362,7 +374,5 @@ async function shutDown(place: Place): Promise<void> {
 }
 
 function reason(error: unknown): string {
-  if (!(error instanceof Error)) return String(error);
-  const spoken = 'stderr' in error && typeof error.stderr === 'string' ? error.stderr.trim() : '';
-  return spoken.split('\n').at(-1) || error.message;
+  return error instanceof Error ? error.message : String(error);
 }

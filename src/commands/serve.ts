@@ -101,9 +101,10 @@ async function privateDatabase(
 ): Promise<string> {
   await installFromDebian(['postgresql'], progress, signal);
   progress.step('Starting the database');
-  const cluster = await startCluster(env.dataDir, { onProgress: (text) => progress.step(text) });
-  closers.push(() => cluster.stop());
-  return cluster.url;
+  const starting = startCluster(env.dataDir, { onProgress: (text) => progress.step(text) });
+  // Known before it runs: broken off now, it is let finish and then stopped.
+  closers.push(async () => (await starting.catch(() => null))?.stop());
+  return (await starting).url;
 }
 
 async function migrateDatabase(url: string, env: Env, progress: Progress): Promise<void> {
