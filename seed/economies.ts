@@ -40,6 +40,7 @@ export interface DemoSeries {
   title: string;
   unit: string;
   timing: Timing | null;
+  adjustment: 'adjusted' | 'unadjusted';
   source: string;
 }
 
@@ -81,23 +82,25 @@ interface Names {
 
 /** The three series that every demo economy has, all invented and saying so. */
 function threeSeries({ demonym, unit, moneyTiming = 'average' }: Names): DemoEconomy['series'] {
+  const average = { timing: 'average', adjustment: 'adjusted' } as const;
   return {
     money: {
       title: 'Broad money',
       unit,
       timing: moneyTiming,
+      adjustment: 'adjusted',
       source: `${demonym} monetary survey (invented)`,
     },
     prices: {
       title: 'Consumer prices',
       unit: 'index points',
-      timing: 'average',
+      ...average,
       source: `${demonym} consumer price index (invented)`,
     },
     activity: {
       title: 'Activity',
       unit: 'index points',
-      timing: 'average',
+      ...average,
       source: `${demonym} monthly activity index (invented)`,
     },
   };
