@@ -1,0 +1,120 @@
+import { z } from 'zod';
+import type { Release } from '../../../../db/tables.ts';
+import { bringUpToDate } from '../../publication/moments.ts';
+import { record } from '../audit.ts';
+import { type InTransaction, type ServiceContext, ServiceError } from '../context.ts';
+import { parseInput } from '../parseInput.ts';
+import { requirePermission } from '../people/permissions.ts';
+import { transact } from '../transact.ts';
+import { requireSecondPair } from './contributors.ts';
+import { lockedRelease, requireStep } from './locked.ts';
+
+/** Pages are drawn before their second: nearer than this nobody can. */
+export const LEAST_AHEAD_MS = 5_000;
+const MOST_AHEAD_MS = 2 * 366 * 24 * 3600 * 1000;
+
+const fields = z.object({
+  id: z.string(),
+  at: z.date('Enter a date and time in UTC.'),
+  reason: z.string().trim().max(1000, 'Use at most 1,000 characters.').default(''),
+});
+
+/**
+ * Schedules an approved release for a second, announces the time where it is new or changed (a change with its
+ * reason), and draws what will change then. The same time again changes nothing.
+ */
+export async function scheduleRelease(
+  ctx: ServiceContext,
+  input: { id: string; at: Date; reason?: string },
+): Promise<void> {
+  const actor = requirePermission(ctx.actor, 'releases.schedule');
+  const { id, at, reason } = parseInput(fields, input);
+  if (at.getMilliseconds() !== 0) throw fault('at', 'Enter a time to the second.');
+  await transact(ctx, async (trx) => {
+    const release = await lockedRelease(trx, id);
+    const isSame = release.scheduled_for?.getTime() === at.getTime();
+    if (release.state === 'scheduled' && isSame) return;
+    requireStep(trx, release, 'schedule');
+    await requireSecondPair(trx, id, actor);
+    const ahead = at.getTime() - trx.now().getTime();
+    if (ahead < LEAST_AHEAD_MS) {
+      throw fault('at', 'Enter a time at least 5 seconds ahead: pages are drawn before it.');
+    }
+    if (ahead > MOST_AHEAD_MS) throw fault('at', 'Enter a time within the next two years.');
+    await refuseBeforeEarlier(trx, release, at);
+    const announced = await announce(trx, release, at, reason, actor.id);
+    await trx.db
+      .updateTable('release')
+      .set({
+        state: 'scheduled',
+        scheduled_for: at,
+        scheduled_by: actor.id,
+        ready_for: null,
+        version: release.version + 1,
+      })
+      .where('id', '=', id)
+      .execute();
+    await record(trx, {
+      action: 'release.scheduled',
+      subject: `release ${id}`,
+      detail: { at, announced, ...(reason && { reason }) },
+    });
+  });
+  await bringUpToDate(ctx);
+}
+
+/** A revision comes out after the one it replaces. */
+async function refuseBeforeEarlier(ctx: InTransaction, release: Release, at: Date): Promise<void> {
+  const earlier = await ctx.db
+    .selectFrom('release')
+    .select('id')
+    .where('economy_code', '=', release.economy_code)
+    .where('period', '=', release.period)
+    .where('revision', '<', release.revision)
+    .where('scheduled_for', '>=', at)
+    .executeTakeFirst();
+  if (earlier) throw fault('at', `Enter a time after that of ${earlier.id}.`);
+}
+
+/**
+ * Announces the time of a first revision where it is new or changed; a correction is not announced, as that would
+ * betray it. Answers whether it did.
+ */
+async function announce(
+  ctx: InTransaction,
+  release: Release,
+  at: Date,
+  reason: string,
+  by: string,
+): Promise<boolean> {
+  if (release.revision > 1) return false;
+  const last = await ctx.db
+    .selectFrom('announcement')
+    .select('due_at')
+    .where('economy_code', '=', release.economy_code)
+    .where('period', '=', release.period)
+    .orderBy('announced_at', 'desc')
+    .limit(1)
+    .executeTakeFirst();
+  if (last?.due_at.getTime() === at.getTime()) return false;
+  if (last && !reason) {
+    const was = last.due_at.toISOString().slice(0, 19).replace('T', ' ');
+    throw fault('reason', `Say why the announced time, ${was} UTC, changes: readers see it.`);
+  }
+  await ctx.db
+    .insertInto('announcement')
+    .values({
+      economy_code: release.economy_code,
+      period: release.period,
+      announced_at: ctx.now(),
+      due_at: at,
+      reason: last ? reason : '',
+      announced_by: by,
+    })
+    .execute();
+  return true;
+}
+
+function fault(field: string, message: string): ServiceError {
+  return new ServiceError('invalid', 'Some fields need another look.', [{ field, message }]);
+}
