@@ -1,6 +1,14 @@
-import { defineConfig } from 'vitest/config';
+import { configDefaults, defineConfig } from 'vitest/config';
 
-const databases = ['./tests/setup/cluster.ts'];
+const cluster = './tests/setup/cluster.ts';
+const build = './tests/setup/build.ts';
+
+/** Tests on databases, tests that ask a built server, tests with a browser; every other test is plain. */
+const folders = {
+  database: 'tests/{db,services,publication,seed,platform/database}/**/*.test.ts',
+  api: 'tests/{api,pages,security}/**/*.test.ts',
+  browser: 'tests/e2e/**/*.test.ts',
+};
 
 export default defineConfig({
   test: {
@@ -11,15 +19,16 @@ export default defineConfig({
         extends: true,
         test: {
           name: 'unit',
-          include: ['tests/{econ,charts,images,lint,platform}/**/*.test.ts'],
+          include: ['tests/**/*.test.ts'],
+          exclude: [...configDefaults.exclude, ...Object.values(folders)],
         },
       },
       {
         extends: true,
         test: {
           name: 'database',
-          include: ['tests/{db,services,publication,seed}/**/*.test.ts'],
-          globalSetup: databases,
+          include: [folders.database],
+          globalSetup: cluster,
           testTimeout: 30_000,
           hookTimeout: 60_000,
         },
@@ -28,8 +37,8 @@ export default defineConfig({
         extends: true,
         test: {
           name: 'api',
-          include: ['tests/api/**/*.test.ts'],
-          globalSetup: databases,
+          include: [folders.api],
+          globalSetup: [cluster, build],
           testTimeout: 30_000,
           hookTimeout: 120_000,
         },
@@ -38,8 +47,8 @@ export default defineConfig({
         extends: true,
         test: {
           name: 'browser',
-          include: ['tests/e2e/**/*.test.ts'],
-          globalSetup: databases,
+          include: [folders.browser],
+          globalSetup: [cluster, build],
           testTimeout: 120_000,
           hookTimeout: 120_000,
           // Two browsers at once on two cores only slow each other.
