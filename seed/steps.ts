@@ -1,0 +1,170 @@
+import { periodLabel } from '../src/lib/charts/figures.ts';
+import { addPeriods, periodDifference } from '../src/lib/econ/periods.ts';
+import type { ComputeResult } from '../src/lib/econ/types.ts';
+import type { ServiceContext } from '../src/lib/services/context.ts';
+import { createEconomy } from '../src/lib/services/economies/create.ts';
+import type { SignedIn } from '../src/lib/services/people/permissions.ts';
+import { approveRelease } from '../src/lib/services/releases/approve.ts';
+import { computeRelease } from '../src/lib/services/releases/compute.ts';
+import { draftRelease } from '../src/lib/services/releases/draft.ts';
+import { getDeskRelease } from '../src/lib/services/releases/get.ts';
+import { scheduleRelease } from '../src/lib/services/releases/schedule.ts';
+import { submitRelease } from '../src/lib/services/releases/submit.ts';
+import { writeRelease } from '../src/lib/services/releases/write.ts';
+import { approveSpecification } from '../src/lib/services/specifications/approve.ts';
+import { draftSpecification } from '../src/lib/services/specifications/draft.ts';
+import { acceptVintage } from '../src/lib/services/vintages/accept.ts';
+import { firstMonth, releaseTimes } from './calendar.ts';
+import type { DemoEconomy, DemoSeries } from './economies.ts';
+import { releaseWords } from './text.ts';
+import { type DemoData, vintageCsv } from './vintages.ts';
+
+/** One thing that somebody at the desk does at a time. */
+export interface Step {
+  at: Date;
+  /** Told when it begins; only for the step of a release that takes longest. */
+  progress?: string;
+  work(): Promise<void>;
+}
+
+/** An economy in the hands of the desk: who works on it, from when, and for which months. */
+export interface Assignment {
+  economy: DemoEconomy;
+  data: DemoData;
+  editor: SignedIn;
+  reviewer: SignedIn;
+  /** The context of a verb that this person calls at the time of the step. */
+  as(person: SignedIn): ServiceContext;
+  /** The time of seeding: nothing later has happened. */
+  now: Date;
+  start: Date;
+  months: readonly string[];
+}
+
+const HOUR = 3_600_000;
+const CONTACT = 'Slackwater desk, desk@example.org';
+const LICENCE = 'CC BY 4.0';
+
+/** What the desk did for an economy up to the time of seeding, each step through the service a person would use. */
+export function economySteps(assignment: Assignment): Step[] {
+  const specification = { id: '' };
+  const steps = [
+    ...foundingSteps(assignment, specification),
+    ...assignment.months.flatMap((period) => releaseSteps(assignment, specification, period)),
+  ];
+  return steps.filter((step) => step.at <= assignment.now);
+}
+
+function foundingSteps(assignment: Assignment, specification: { id: string }): Step[] {
+  const { economy, editor, reviewer, as, start, months } = assignment;
+  const { code, name, nameInText, currency } = economy;
+  const { money, prices, activity } = economy.series;
+  const series = {
+    money: described(money),
+    prices: described(prices),
+    activity: described(activity),
+  };
+  return [
+    {
+      at: new Date(start.getTime() + HOUR),
+      async work() {
+        await createEconomy(as(editor), {
+          code,
+          name,
+          nameInText,
+          currency,
+          frequency: 'monthly',
+          contact: CONTACT,
+          series,
+        });
+        const drafted = await draftSpecification(as(editor), {
+          economy: code,
+          reason: economy.reason,
+          holdsFrom: months[0]!,
+          assumptions: economy.assumptions,
+        });
+        specification.id = drafted.id;
+      },
+    },
+    {
+      at: new Date(start.getTime() + 3 * HOUR),
+      work: () => approveSpecification(as(reviewer), specification.id),
+    },
+  ];
+}
+
+function described(series: DemoSeries) {
+  return { ...series, licence: LICENCE, serveValues: true };
+}
+
+function releaseSteps(
+  assignment: Assignment,
+  specification: { id: string },
+  period: string,
+): Step[] {
+  const { economy, editor, reviewer, as } = assignment;
+  const times = releaseTimes(assignment.now, economy.slot, period);
+  let vintageId: string;
+  let id: string;
+  let result: ComputeResult;
+  const version = async (person: SignedIn) =>
+    (await getDeskRelease(as(person), id)).release.version;
+  return [
+    {
+      at: times.loaded,
+      async work() {
+        const vintage = newVintage(assignment, period, times.source);
+        vintageId = (await acceptVintage(as(editor), vintage)).id;
+      },
+    },
+    {
+      at: times.computed,
+      async work() {
+        id = await draftRelease(as(editor), {
+          economy: economy.code,
+          period,
+          vintageId,
+          specificationId: specification.id,
+        });
+        result = await computeRelease(as(editor), id);
+      },
+    },
+    {
+      at: times.written,
+      async work() {
+        const { code, nameInText } = economy;
+        const { gap } = economy.assumptions;
+        const words = releaseWords({
+          code,
+          nameInText,
+          period,
+          result,
+          persistence: gap?.persistence,
+        });
+        await writeRelease(as(editor), { id, version: await version(editor), ...words });
+      },
+    },
+    { at: times.submitted, work: () => submitRelease(as(editor), id) },
+    {
+      at: times.approved,
+      progress: `${economy.name}, ${periodLabel(period)}`,
+      work: async () => approveRelease(as(reviewer), { id, version: await version(reviewer) }),
+    },
+    { at: times.scheduled, work: () => scheduleRelease(as(reviewer), { id, at: times.due }) },
+  ];
+}
+
+function newVintage({ economy, data, now }: Assignment, period: string, sourcePublishedAt: Date) {
+  const start = firstMonth(now);
+  const position = periodDifference(start, period);
+  const before = periodLabel(addPeriods(period, -1));
+  const note = [`Money for ${before} is revised.`];
+  if (position === economy.pricesRebasedFrom) note.push('Prices have a new base year.');
+  return {
+    economy: economy.code,
+    fileName: `${economy.code}-${period}.csv`,
+    bytes: new TextEncoder().encode(vintageCsv(data.vintage(position), start)),
+    sourcePublishedAt,
+    note: note.join(' '),
+  };
+}
