@@ -117,6 +117,13 @@ describe('a coming moment', () => {
     at('2031-10-01T09:00:00Z');
     const one = await process();
     expect(await one.text('/releases/XTA/2031-08/')).toBeNull();
+
+    // Nor with what comes after it.
+    await stage.schedule('2031-09', '2031-10-01T10:00:00Z');
+    await bringUpToDate(stage.ctx);
+    await one.pages.sync();
+    at('2031-10-01T10:00:00Z');
+    expect(await one.text('/')).toBe('/: 2031-09');
   });
 });
 

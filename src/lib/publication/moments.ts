@@ -72,9 +72,11 @@ export async function isBehind(db: Db, at: Date): Promise<boolean> {
 
 /**
  * Takes a coming moment out, in the transaction that unschedules its release: its rows go, and the later moments,
- * drawn on top of it, do not count until they are drawn again (`bringUpToDate`).
+ * drawn on top of it, do not count until they are drawn again (`bringUpToDate`). A second that has passed stays as
+ * it was: a release that missed it is in nothing that was drawn.
  */
 export async function takeOut(ctx: InTransaction, at: Date): Promise<void> {
+  if (at <= ctx.now()) return;
   await ctx.db.deleteFrom('moment').where('visible_from', '=', at).execute();
   await ctx.db.updateTable('moment').set({ ready: false }).where('visible_from', '>', at).execute();
   await ctx.db
@@ -119,7 +121,7 @@ export async function redraw(
     for (const { address, visible_from } of stale) {
       const row = await drawPage(ctx, address, {
         at: visible_from,
-        rehearsal: visible_from > now,
+        ...(visible_from > now ? { rehearsedAt: now } : {}),
       });
       drawn.push({ at: visible_from, row });
       onPage?.(drawn.length, stale.length);
@@ -178,7 +180,7 @@ function groupBySecond(coming: Coming[]): Coming[][] {
 }
 
 async function drawMoment(ctx: ServiceContext, at: Date, releases: Coming[]): Promise<Row[]> {
-  const view: View = { at, rehearsal: true };
+  const view: View = { at, rehearsedAt: ctx.now() };
   const pages = new Set<string>(SITE_PAGES);
   const files: PlacedFile[] = [];
   for (const release of releases) {

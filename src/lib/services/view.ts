@@ -4,8 +4,11 @@
  */
 export interface View {
   at: Date;
-  /** Rendering a coming moment: releases scheduled up to `at` count although their moment is not ready yet. */
-  rehearsal?: boolean;
+  /**
+   * Set while a coming moment is drawn, to the instant of drawing: releases scheduled after it and up to `at` count
+   * although they are not ready yet. One that missed its own second does not.
+   */
+  rehearsedAt?: Date;
   /** A release that counts as published at `at` whatever its state: the desk's preview. */
   include?: string;
 }

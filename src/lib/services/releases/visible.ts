@@ -4,13 +4,20 @@ import type { View } from '../view.ts';
 
 /**
  * Whether a release is public in a view: its second has come and its pages are ready. A rehearsal counts what is
- * scheduled although it is not ready yet; the one named by `include` counts in any state.
+ * still to come although it is not ready yet; the one named by `include` counts in any state.
  */
 export function isVisible(view: View) {
   return (eb: ExpressionBuilder<Database, 'release'>): Expression<SqlBool> => {
-    const bySecond = view.rehearsal
-      ? eb('release.scheduled_for', '<=', view.at)
-      : eb('release.ready_for', '<=', view.at);
+    const ready = eb('release.ready_for', '<=', view.at);
+    const bySecond = view.rehearsedAt
+      ? eb.or([
+          ready,
+          eb.and([
+            eb('release.scheduled_for', '>', view.rehearsedAt),
+            eb('release.scheduled_for', '<=', view.at),
+          ]),
+        ])
+      : ready;
     const published = eb.and([eb('release.state', '=', 'scheduled'), bySecond]);
     return view.include ? eb.or([published, eb('release.id', '=', view.include)]) : published;
   };
