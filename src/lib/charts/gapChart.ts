@@ -10,6 +10,7 @@ import type { Panel } from './panel.ts';
 import { periodLabel, periodNoun } from './periodLabels.ts';
 import { drawSvg } from './svg.ts';
 import type { Chart, ChartOptions } from './svg.ts';
+import { textWidth } from './textWidth.ts';
 
 export interface GapChartOptions extends ChartOptions {
   data: GapData;
@@ -25,8 +26,14 @@ export interface GapChartOptions extends ChartOptions {
   domain?: number;
 }
 
-/** Room for the last value and the band's ends. */
-const marginRight = 78;
+/** Between the plot and its last value: the bracket. */
+const bracketRoom = 12;
+
+/** Room right of the plot for the last value and the band's ends, in px. */
+function lastRoom(last: LastGap | null, options: GapChartOptions): number {
+  const text = withUnit(gapFigure(last?.value, options), '%');
+  return Math.max(78, bracketRoom + Math.ceil(textWidth(text, valueSize, 600)));
+}
 
 /** The last periods of `data` that a chart of `width` px shows; nothing where no gap is published. */
 export function shownGaps(data: GapData, width: number, count?: number): GapData {
@@ -54,8 +61,9 @@ export function gapChart(options: GapChartOptions): Chart {
   const { data, width, palette, rejected } = options;
   const shown = shownGaps(data, width, options.count);
   const domain = options.domain ?? gapDomain(shown, rejected);
-  const area = panel({ chart: options, periods: shown.periods, domain, marginRight });
   const last = lastGap(shown);
+  const marginRight = lastRoom(last, options);
+  const area = panel({ chart: options, periods: shown.periods, domain, marginRight });
   const { band, pieces } = gapLines(shown, palette);
   const edge = { x: 'x', z: 'run', stroke: palette.rule2, strokeWidth: 1 } as const;
   const marks: Plot.Markish[] = [
@@ -125,7 +133,7 @@ function lastMarks(area: Panel, last: LastGap, options: GapChartOptions): Plot.M
 }
 
 function lastLabels(area: Panel, last: LastGap, options: GapChartOptions): Label[] {
-  const x = area.right + 12;
+  const x = area.right + bracketRoom;
   const { ink2 } = options.palette;
   const value: Label = {
     text: withUnit(gapFigure(last.value, options), '%'),

@@ -1,20 +1,12 @@
 import { periodsShown, spanLabel, symmetricDomain } from './axes.ts';
 import { side, surpriseFigure, withUnit } from './figures.ts';
 import { periodLabel, periodNoun } from './periodLabels.ts';
-import {
-  axisLabels,
-  datumMarks,
-  gridMarks,
-  narrowBelow,
-  panel,
-  panelScales,
-  plotHeight,
-} from './panel.ts';
+import { axisLabels, datumMarks, gridMarks, panel, panelScales, plotHeight } from './panel.ts';
 import type { Panel } from './panel.ts';
 import { shareInside } from './surpriseData.ts';
 import type { SurpriseData } from './surpriseData.ts';
 import { barMarks, rangeMarks } from './surpriseMarks.ts';
-import { annotations, latestLabels, rangeLabels } from './surpriseLabels.ts';
+import { annotations, latestLabels, latestRoom, rangeLabels } from './surpriseLabels.ts';
 import { drawSvg } from './svg.ts';
 import type { Chart, ChartOptions } from './svg.ts';
 
@@ -24,11 +16,6 @@ export interface SurpriseChartOptions extends ChartOptions {
   count?: number;
   /** Half the height of the scale, in pp: give two charts the same and they share their datum and scale. */
   domain?: number;
-}
-
-/** Room for the latest value beside the last bar, or none where it stands inside the plot. */
-export function surpriseMargin(width: number): number {
-  return width < narrowBelow ? 0 : 74;
 }
 
 /** The last periods of `data` that a chart of `width` px shows. */
@@ -60,7 +47,7 @@ export function surpriseChart(options: SurpriseChartOptions): Chart {
     chart: options,
     periods: shown.periods,
     domain,
-    marginRight: surpriseMargin(width),
+    marginRight: latestRoom(shown, options),
   };
   let area: Panel = panel(frame);
   let latest = latestLabels(area, shown);

@@ -5,14 +5,22 @@ import { narrowBelow } from './panel.ts';
 import type { Panel } from './panel.ts';
 import { periodLabel, periodNoun } from './periodLabels.ts';
 import type { SurpriseData } from './surpriseData.ts';
+import type { ChartOptions } from './svg.ts';
 import { barShare } from './surpriseMarks.ts';
 import { textWidth } from './textWidth.ts';
 
 /** Room between a mark and what names it, in px. */
 const clear = 6;
 
-function figure(panel: Panel, value: number): string {
-  return withUnit(surpriseFigure(value, panel.chart), 'pp');
+function figure({ chart }: { chart: ChartOptions }, value: number): string {
+  return withUnit(surpriseFigure(value, chart), 'pp');
+}
+
+/** Room right of the plot for the latest value, in px; none in a narrow chart, where it stands inside. */
+export function latestRoom({ surprise }: SurpriseData, chart: ChartOptions): number {
+  if (chart.width < narrowBelow) return 0;
+  const value = surprise.findLast((one) => one !== null) ?? 0;
+  return Math.max(74, clear + Math.ceil(textWidth(figure({ chart }, value), valueSize, 600)));
 }
 
 /** How far bars reach from the datum between two x, in px; up is negative. */
