@@ -1,0 +1,95 @@
+import { afterAll, beforeAll, describe, expect, test } from 'vitest';
+import type { DemoAccounts } from '../../seed/accounts.ts';
+import { seedDemo } from '../../seed/seed.ts';
+import { verifyAudit } from '../../src/lib/services/audit.ts';
+import { listReleases } from '../../src/lib/services/releases/public.ts';
+import { type Stage, seedStage } from './stage.ts';
+
+const NOW = new Date('2031-10-01T13:20:00Z');
+const MINUTE = 60_000;
+
+let stage: Stage;
+let accounts: DemoAccounts;
+const progress: string[] = [];
+
+beforeAll(async () => {
+  stage = await seedStage();
+  const onProgress = (text: string) => progress.push(text);
+  accounts = await seedDemo(stage.runtime, { now: NOW, months: 2, onProgress });
+});
+afterAll(() => stage.close());
+
+const idsAt = async (at: Date) =>
+  (await listReleases(stage.runtime.db, { at })).map(({ id }) => id).sort();
+
+describe('the seeded demo', () => {
+  test('has people for every role, with passwords of their own', () => {
+    expect(accounts.accounts.map(({ role }) => role)).toEqual([
+      'administrator',
+      'editor',
+      'editor',
+      'reviewer',
+      'subscriber',
+    ]);
+    for (const { email, password, totp_secret } of accounts.accounts) {
+      expect(email).toMatch(/^[a-z-]+@example\.org$/);
+      expect(password.length).toBeGreaterThanOrEqual(24);
+      expect(totp_secret).toBeNull();
+    }
+    expect(new Set(accounts.accounts.map(({ password }) => password)).size).toBe(5);
+  });
+
+  test('has the newest month out where it is due and every month before', async () => {
+    expect(await idsAt(NOW)).toEqual([
+      'XAL-2031-07-r1',
+      'XAL-2031-08-r1',
+      'XBR-2031-07-r1',
+      'XBR-2031-08-r1',
+      'XCL-2031-07-r1',
+      'XCL-2031-08-r1',
+      'XDU-2031-07-r1',
+      'XES-2031-07-r1',
+    ]);
+  });
+
+  test('publishes Estavel fifteen minutes after seeding, with nobody doing anything', async () => {
+    const second = NOW.getTime() + 15 * MINUTE;
+    expect(await idsAt(new Date(second - 1000))).not.toContain('XES-2031-08-r1');
+    expect(await idsAt(new Date(second))).toContain('XES-2031-08-r1');
+  });
+
+  test('lets out no vintage before its release', async () => {
+    const vintages = await stage.runtime.db.selectFrom('vintage').selectAll().execute();
+    expect(vintages).toHaveLength(9);
+    for (const { public_from, known_from, source_published_at } of vintages) {
+      expect(source_published_at < known_from).toBe(true);
+      expect(public_from! > known_from).toBe(true);
+    }
+  });
+
+  test('has every release approved by somebody who made no part of it', async () => {
+    const releases = await stage.runtime.db.selectFrom('release').selectAll().execute();
+    const parts = await stage.runtime.db.selectFrom('release_contributor').selectAll().execute();
+    for (const { id, approved_by, created_by } of releases) {
+      const makers = parts.filter((row) => row.release_id === id).map((row) => row.person_id);
+      expect(makers).toContain(created_by);
+      expect(makers).not.toContain(approved_by);
+    }
+  });
+
+  test('tells in the audit trail that its clock was stepped, and nothing later than seeding', async () => {
+    const rows = await stage.runtime.db.selectFrom('audit').selectAll().orderBy('id').execute();
+    expect(rows.length).toBeGreaterThan(60);
+    for (const row of rows) {
+      expect(row.detail).toMatchObject({ clock: 'stepped' });
+      expect(row.at <= NOW).toBe(true);
+    }
+    expect(rows.map(({ at }) => at)).toEqual(rows.map(({ at }) => at).toSorted((a, b) => +a - +b));
+    expect((await verifyAudit(stage.runtime.db)).brokenAt).toBeNull();
+  });
+
+  test('says what it does', () => {
+    expect(progress[0]).toBe('Seeding the demo: people');
+    expect(progress.at(-1)).toMatch(/^Seeding the demo: .*, \w+ 2031 \(9 of 9\)$/);
+  });
+});
