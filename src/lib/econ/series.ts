@@ -52,8 +52,14 @@ export function minus(a: Float64Array, b: Float64Array): Float64Array {
   return a.map((value, t) => value - b[t]!);
 }
 
+/** The part of a request that holds its series. */
+export type SeriesOfRequest = Pick<
+  ComputeRequest,
+  'frequency' | 'money' | 'prices' | 'activity' | 'surveyed_growth'
+>;
+
 /** Brings a valid request's series into log points on money's periods. */
-export function prepare(request: ComputeRequest): Data {
+export function prepare(request: SeriesOfRequest): Data {
   const { frequency } = request;
   const start = parsePeriod(request.money.start, frequency).index;
   const money = logPoints(request.money.values);

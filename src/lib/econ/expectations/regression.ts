@@ -5,16 +5,11 @@ import { formatPeriod } from '../periods.ts';
 import { RefusedError } from '../refusal.ts';
 import { indicators, lagged, type Data } from '../series.ts';
 import type { Expectation } from '../types.ts';
+import { largestOrder } from './coefficients.ts';
 import { emptyPath, type ExpectationPath } from './expectation.ts';
 
 /** The rules that learn by least squares. */
 export type RegressionRule = Extract<Expectation, { rule: 'random_walk' | 'autoregression' }>;
-
-/** Largest lag order of a rule: P of the method's section 3. */
-export function largestOrder(rule: Expectation): number {
-  if (rule.rule !== 'autoregression') return 0;
-  return typeof rule.order === 'number' ? rule.order : rule.order.max;
-}
 
 /**
  * One-step expectations by recursive least squares (method, section 2): at each target t, growth on a constant,

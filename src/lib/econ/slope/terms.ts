@@ -1,4 +1,4 @@
-import { largestOrder } from '../expectations/regression.ts';
+import { largestOrder } from '../expectations/coefficients.ts';
 import { isRegression } from '../expectations/expect.ts';
 import type { ExpectationPath } from '../expectations/expectation.ts';
 import { indicators, type Data } from '../series.ts';

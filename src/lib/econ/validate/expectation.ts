@@ -1,4 +1,4 @@
-import { PERIODS_A_YEAR } from '../periods.ts';
+import { coefficientsOf } from '../expectations/coefficients.ts';
 import type { Expectation, Frequency, Seasonal, Window } from '../types.ts';
 import type { Fields, Path, Reader } from './reader.ts';
 
@@ -43,10 +43,11 @@ export function readExpectation(
   const order = rule === 'autoregression' ? readOrder(reader, fields, path) : undefined;
   if (window === undefined) return undefined;
 
-  const largest = order === undefined ? 0 : typeof order === 'number' ? order : order.max;
-  const indicators =
-    seasonal === 'dummies' && frequency !== undefined ? PERIODS_A_YEAR[frequency] - 1 : 0;
-  const coefficients = 1 + largest + indicators;
+  const learns: Expectation =
+    rule === 'autoregression'
+      ? { rule, order: order ?? 0, seasonal, window }
+      : { rule: 'random_walk', seasonal, window };
+  const coefficients = coefficientsOf(learns, frequency ?? 'annual');
   if (window.length <= coefficients) {
     reader.fault(
       [...path, 'window', 'length'],
