@@ -27,7 +27,7 @@ function problemOf({ columns, data, coefficients }: NistProblem) {
 }
 
 describe("least squares reaches NIST's certified values", () => {
-  // Double precision keeps about 7 digits of Filip (condition 1e10).
+  // Powers of x to the tenth, rounded to doubles, keep about 7 digits of Filip (condition 1e10).
   test.each([
     ['nist-longley', 9, 9],
     ['nist-norris', 9, 9],
