@@ -44,6 +44,7 @@ export function createAuth({ pool, env, mail }: AuthParts) {
     secret: env.secret,
     database: pool,
     telemetry: { enabled: false },
+    logger: { level: 'error' },
     emailAndPassword: {
       enabled: true,
       // Signing up is services/people/signUp.ts, so that the audit row stands in the same transaction.
