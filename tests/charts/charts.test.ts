@@ -40,11 +40,8 @@ describe.each(Object.entries(charts))('%s', (name, draw) => {
 
   it('draws its datum in ink from edge to edge', () => {
     const { svg, width, datumY } = draw(600);
-    const ink = lightPalette.ink;
-    const line = new RegExp(
-      `<line x1="0" x2="${width}" y1="${datumY}" y2="${datumY}"|<g stroke="${ink}"`,
-    );
-    expect(svg).toMatch(line);
+    const line = `<line x1="0" x2="${width}" y1="${datumY}" y2="${datumY}"/>`;
+    expect(svg).toContain(`<g stroke="${lightPalette.ink}">${line}`);
   });
 });
 

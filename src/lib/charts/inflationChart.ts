@@ -80,7 +80,7 @@ export function inflationChart(options: InflationChartOptions): Chart {
         stroke: palette.rule,
       }),
       ...partMarks(parts, palette, `url(#${hatch})`),
-      Plot.ruleY([0], { stroke: palette.ink, insetLeft: -left, insetRight: right - width }),
+      Plot.ruleY([0], { stroke: palette.ink }),
       ...inflationMarks(inflation.actual, options),
       ...(leaders === '' ? [] : [pathMark(leaders, palette.rule2)]),
     ],

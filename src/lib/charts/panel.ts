@@ -110,10 +110,7 @@ export function datumMarks(panel: Panel): Plot.Markish[] {
   const { chart, years, datumY, x, step } = panel;
   const { ink } = chart.palette;
   const ticks = years.map(({ index }) => `M${tickX(panel, index, x, step)},${datumY}v5`).join('');
-  return [
-    Plot.ruleY([0], { stroke: ink, insetLeft: -panel.left, insetRight: panel.right - chart.width }),
-    ...(ticks === '' ? [] : [pathMark(ticks, ink)]),
-  ];
+  return [Plot.ruleY([0], { stroke: ink }), ...(ticks === '' ? [] : [pathMark(ticks, ink)])];
 }
 
 function tickX(panel: Panel, index: number, x: Panel['x'], step: number): number {

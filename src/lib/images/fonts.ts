@@ -9,21 +9,36 @@ export interface ImageFont {
   data: Buffer;
 }
 
+/** Names of economies and sources may need letters beyond the basic slice; the later slices fill its holes. */
+const slices = {
+  Merriweather: ['latin', 'latin-ext', 'cyrillic', 'cyrillic-ext', 'vietnamese'],
+  'Source Sans 3': ['latin', 'latin-ext', 'cyrillic', 'cyrillic-ext', 'vietnamese', 'greek'],
+};
+
+export type Family = keyof typeof slices;
+
 interface Face {
-  name: string;
+  family: Family;
   folder: string;
   weight: FontWeight;
 }
 
 const faces: Face[] = [
-  { name: 'Merriweather', folder: 'merriweather', weight: 300 },
-  { name: 'Merriweather', folder: 'merriweather', weight: 700 },
-  { name: 'Source Sans 3', folder: 'source-sans-3', weight: 400 },
-  { name: 'Source Sans 3', folder: 'source-sans-3', weight: 600 },
+  { family: 'Merriweather', folder: 'merriweather', weight: 300 },
+  { family: 'Merriweather', folder: 'merriweather', weight: 700 },
+  { family: 'Source Sans 3', folder: 'source-sans-3', weight: 400 },
+  { family: 'Source Sans 3', folder: 'source-sans-3', weight: 600 },
 ];
 
-/** Names of economies and sources may need letters beyond the basic slice; the later slices fill its holes. */
-const slices = ['latin', 'latin-ext', 'cyrillic', 'vietnamese'];
+/** The slices have names of their own: of two faces with one name and weight only the first would be used. */
+function sliceName(family: Family, slice: string): string {
+  return slice === 'latin' ? family : `${family} ${slice}`;
+}
+
+/** A family with its slices in their order, as a `font-family`. */
+export function familyNames(family: Family): string {
+  return slices[family].map((slice) => sliceName(family, slice)).join(', ');
+}
 
 const loaded = new Map<string, Promise<ImageFont[]>>();
 
@@ -35,7 +50,7 @@ export function loadFonts(directory: string): Promise<ImageFont[]> {
   const known = loaded.get(directory);
   if (known !== undefined) return known;
   const reading = Promise.all(
-    slices.flatMap((slice) => faces.map((face) => readFace(directory, face, slice))),
+    faces.flatMap((face) => slices[face.family].map((slice) => readFace(directory, face, slice))),
   );
   // A failed reading is forgotten, so that a directory that appears later is found.
   reading.catch(() => loaded.delete(directory));
@@ -44,9 +59,7 @@ export function loadFonts(directory: string): Promise<ImageFont[]> {
 }
 
 async function readFace(directory: string, face: Face, slice: string): Promise<ImageFont> {
-  const { name, folder, weight } = face;
+  const { family, folder, weight } = face;
   const file = path.join(directory, folder, 'files', `${folder}-${slice}-${weight}-normal.woff`);
-  // The slices have names of their own: of two faces with one name and weight only the first is ever used.
-  const named = slice === slices[0] ? name : `${name} ${slice}`;
-  return { name: named, weight, style: 'normal', data: await readFile(file) };
+  return { name: sliceName(family, slice), weight, style: 'normal', data: await readFile(file) };
 }

@@ -53,12 +53,15 @@ function plan(input: ShareImageInput, palette: Palette): WidePlan {
   };
 }
 
-function lastTwoYears({ periods, surprise, forecast_se }: SurpriseData): SurpriseData {
-  return {
+/** The input with no more of its history than is drawn. */
+function withLastTwoYears(input: ShareImageInput): ShareImageInput {
+  const { periods, surprise, forecast_se } = input.history;
+  const history = {
     periods: periods.slice(-24),
     surprise: surprise.slice(-24),
     forecast_se: forecast_se.slice(-24),
   };
+  return { ...input, history };
 }
 
 /** The wide image as SVG, with the blocks of text it holds. */
@@ -66,7 +69,7 @@ export async function wideSvg(
   given: ShareImageInput,
   fontDirectory: string,
 ): Promise<{ svg: string; blocks: TextBlock[] }> {
-  const input = { ...given, history: lastTwoYears(given.history) };
+  const input = withLastTwoYears(given);
   const { history } = input;
   const palette = palettes[input.theme ?? 'light'];
   const planned = plan(input, palette);
@@ -95,9 +98,10 @@ export async function wideSvg(
  * the converter needs a font. `fontDirectory` is the folder of the @fontsource packages.
  */
 export async function shareImage(
-  input: ShareImageInput,
+  given: ShareImageInput,
   fontDirectory: string,
 ): Promise<ShareImage> {
+  const input = withLastTwoYears(given);
   const { svg } = await wideSvg(input, fontDirectory);
   const png = new Resvg(svg, { font: { loadSystemFonts: false } }).render().asPng();
   return { svg, png, alt: alternativeText(input), caption: captionText(input) };

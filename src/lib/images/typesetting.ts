@@ -1,7 +1,6 @@
 import satori from 'satori';
-import type { ImageFont } from './fonts.ts';
-
-export type Family = 'Merriweather' | 'Source Sans 3';
+import { familyNames } from './fonts.ts';
+import type { Family, ImageFont } from './fonts.ts';
 
 /** One piece of text in an image; every length in px. */
 export interface TextBlock {
@@ -41,13 +40,13 @@ function element(block: TextBlock, canvas: number): Element {
   const style: Record<string, string | number> = {
     position: 'absolute',
     top,
-    fontFamily: family,
+    fontFamily: familyNames(family),
     fontSize: size,
     fontWeight: weight,
     lineHeight: `${lineHeight}px`,
     color: fill,
     ...(anchor === 'end' ? { right: canvas - x } : { left: x }),
-    ...(width === undefined ? { whiteSpace: 'nowrap' } : { width }),
+    ...(width === undefined ? { whiteSpace: 'nowrap' } : { width, wordBreak: 'break-word' }),
     ...(block.letterSpacing === undefined ? {} : { letterSpacing: block.letterSpacing }),
   };
   return { type: 'div', props: { style, children: text } };
