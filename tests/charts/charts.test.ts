@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { accountingSwatch } from '../../src/lib/charts/accountingSwatch.ts';
 import { explainerCharts } from '../../src/lib/charts/explainerCharts.ts';
 import { gapChart } from '../../src/lib/charts/gapChart.ts';
 import { gauge, gaugeScale } from '../../src/lib/charts/gauge.ts';
@@ -26,7 +27,9 @@ const charts = {
 
 describe.each(Object.entries(charts))('%s', (name, draw) => {
   it('keeps its picture', async () => {
-    await expect(`${draw(600).svg}\n`).toMatchFileSnapshot(`snapshots/${name}.svg`);
+    // An element a line, so that a difference can be read.
+    const lines = draw(600).svg.replaceAll('><', '>\n<');
+    await expect(`${lines}\n`).toMatchFileSnapshot(`snapshots/${name}.svg`);
   });
 
   it.each(widths)('is one image with words at %i px, drawn without style or script', (width) => {
@@ -127,5 +130,26 @@ describe('gauge', () => {
     const above = baseline <= chart.datumY - 8;
     const below = baseline - 0.75 * 38 >= chart.datumY + 7.9;
     expect(value < -0.005 ? below : above).toBe(true);
+  });
+});
+
+describe('accountingSwatch', () => {
+  it('is a mark without words for every part, with ids of its own', () => {
+    const parts = [
+      'expected_money',
+      'current_surprise',
+      'carry_over',
+      'unexplained',
+      'actual',
+    ] as const;
+    const swatches = parts.map((part) =>
+      accountingSwatch(part, { palette: lightPalette, idPrefix: `list-${part}` }),
+    );
+    expect(new Set(swatches).size).toBe(parts.length);
+    for (const svg of swatches) {
+      expect(svg).toContain('aria-hidden="true"');
+      expect(svg).not.toMatch(/style|<text/);
+    }
+    expect(swatches[2]).toContain('url(#list-carry_over-hatch)');
   });
 });

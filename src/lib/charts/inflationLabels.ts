@@ -105,21 +105,27 @@ export function periodLabels(
   column: number,
   place: { x: (index: number) => number; y: number; fill: string },
 ): Label[] {
-  const labels: Label[] = [];
-  let freeFrom = -Infinity;
-  for (const [i, period] of periods.entries()) {
+  const parts = periods.map((period) => {
     const { frequency, index } = parsePeriod(period);
     const season = seasonOf(index, frequency);
-    const year = period.slice(0, 4);
+    const names = {
+      monthly: () => monthName(season + 1, 'short'),
+      quarterly: () => `Q${season + 1}`,
+      annual: () => '',
+    };
+    return { season, year: period.slice(0, 4), name: names[frequency]() };
+  });
+  const widest = Math.max(...parts.map(({ name }) => textWidth(name, labelSize)));
+  const labels: Label[] = [];
+  let freeFrom = -Infinity;
+  for (const [i, { season, year, name }] of parts.entries()) {
     const at = { x: place.x(i + 0.5), fill: place.fill, anchor: 'middle' } as const;
-    if (frequency !== 'annual') {
-      const name = frequency === 'quarterly' ? `Q${season + 1}` : monthName(season + 1, 'short');
-      const fits = textWidth(name, labelSize) + 4 <= column;
-      labels.push({ ...at, y: place.y, text: fits ? name : name.slice(0, 1) });
-    }
+    // All names are cut to their first letter or none is: a mixture would be hard to read.
+    const text = widest + 4 <= column ? name : name.slice(0, 1);
+    if (text !== '') labels.push({ ...at, y: place.y, text });
     const half = textWidth(year, labelSize) / 2;
     if ((i === 0 || season === 0) && at.x - half >= freeFrom) {
-      labels.push({ ...at, y: place.y + (frequency === 'annual' ? 0 : 16), text: year });
+      labels.push({ ...at, y: place.y + (text === '' ? 0 : 16), text: year });
       freeFrom = at.x + half + 8;
     }
   }

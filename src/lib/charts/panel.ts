@@ -1,12 +1,11 @@
 import * as Plot from '@observablehq/plot';
 import { symmetricDomain, tickRoom, tickStep, valueTicks, yearTicks } from './axes.ts';
 import type { ValueTick, YearTick } from './axes.ts';
-import { baselineAt, labelSize } from './labels.ts';
+import { baselineAt, labelBox } from './labels.ts';
 import type { Label } from './labels.ts';
 import { parsePeriod } from '../econ/periods.ts';
 import { periodLabel } from './periodLabels.ts';
 import type { ChartOptions } from './svg.ts';
-import { textWidth } from './textWidth.ts';
 
 /** Below this width labels move from the right margin into the plot. */
 export const narrowBelow = 480;
@@ -146,7 +145,7 @@ export function axisLabels(panel: Panel): Label[] {
       const anchor = annual ? 'middle' : 'start';
       return { text: year, x: tickX(panel, index, x, step), y: below, fill, anchor };
     })
-    .filter((label) => label.x + textWidth(label.text, labelSize) <= chart.width);
+    .filter((label) => labelBox(label).right <= chart.width);
   if (yearLabels.length === 0 && periods[0] !== undefined) {
     yearLabels.push({ text: periodLabel(periods[0], 'short'), x: left, y: below, fill });
   }

@@ -1,12 +1,28 @@
 import { periodsShown, spanLabel, symmetricDomain } from './axes.ts';
 import { side, surpriseFigure, withUnit } from './figures.ts';
 import { periodLabel, periodNoun } from './periodLabels.ts';
-import { axisLabels, datumMarks, gridMarks, panel, panelScales, plotHeight } from './panel.ts';
+import {
+  axisLabels,
+  datumMarks,
+  gridMarks,
+  narrowBelow,
+  panel,
+  panelScales,
+  plotHeight,
+} from './panel.ts';
 import type { Panel } from './panel.ts';
 import { shareInside } from './surpriseData.ts';
 import type { SurpriseData } from './surpriseData.ts';
 import { barMarks, rangeMarks } from './surpriseMarks.ts';
-import { annotations, latestLabels, latestRoom, rangeLabels } from './surpriseLabels.ts';
+import {
+  annotations,
+  besideLabels,
+  insideLabels,
+  latestRoom,
+  rangeLabels,
+} from './surpriseLabels.ts';
+import { labelBox } from './labels.ts';
+import type { Label } from './labels.ts';
 import { drawSvg } from './svg.ts';
 import type { Chart, ChartOptions } from './svg.ts';
 
@@ -42,20 +58,7 @@ export function surpriseChart(options: SurpriseChartOptions): Chart {
   const { data, width, count } = options;
   const shown = shownSurprises(data, width, count);
   const domain = options.domain ?? surpriseDomain(shown);
-  const half = plotHeight(width) / 2;
-  const frame = {
-    chart: options,
-    periods: shown.periods,
-    domain,
-    marginRight: latestRoom(shown, options),
-  };
-  let area: Panel = panel(frame);
-  let latest = latestLabels(area, shown);
-  const overflow = 14 - Math.min(...latest.map(({ y }) => y - 13), 14);
-  if (overflow > 0) {
-    area = panel({ ...frame, marginTop: 24 + Math.ceil(overflow) });
-    latest = latestLabels(area, shown);
-  }
+  const { area, latest } = placeLatest(options, shown, domain);
   const named = annotations(area, shown, latest);
   const share = shareInside(data);
   const labels = [
@@ -72,12 +75,35 @@ export function surpriseChart(options: SurpriseChartOptions): Chart {
     marks: [
       ...rangeMarks(shown, options.palette),
       ...gridMarks(area),
-      ...barMarks(shown, options.palette, domain / half),
+      ...barMarks(shown, options.palette, (2 * domain) / plotHeight(width)),
       ...datumMarks(area),
     ],
     labels,
   });
   return { svg, width, height: area.height, datumY: area.datumY };
+}
+
+/** The panel with its latest value: beside the plot, or inside a narrow one, which then may need room on top. */
+function placeLatest(
+  chart: ChartOptions,
+  shown: SurpriseData,
+  domain: number,
+): { area: Panel; latest: Label[] } {
+  const frame = { chart, periods: shown.periods, domain };
+  if (chart.width < narrowBelow) {
+    const area = panel({ ...frame, marginRight: 0 });
+    const latest = insideLabels(area, shown);
+    if (latest !== null) {
+      const overflow = Math.ceil(2 - Math.min(2, ...latest.map((label) => labelBox(label).top)));
+      const lowered = latest.map((label) => ({ ...label, y: label.y + overflow }));
+      return {
+        area: panel({ ...frame, marginRight: 0, marginTop: 24 + overflow }),
+        latest: lowered,
+      };
+    }
+  }
+  const area = panel({ ...frame, marginRight: latestRoom(shown, chart) });
+  return { area, latest: besideLabels(area, shown) };
 }
 
 function describe(

@@ -1,7 +1,6 @@
 import { side, surpriseFigure, withUnit } from './figures.ts';
 import { labelBox, overlap, valueSize } from './labels.ts';
 import type { Box, Label } from './labels.ts';
-import { narrowBelow } from './panel.ts';
 import type { Panel } from './panel.ts';
 import { periodLabel, periodNoun } from './periodLabels.ts';
 import type { SurpriseData } from './surpriseData.ts';
@@ -16,9 +15,8 @@ function figure({ chart }: { chart: ChartOptions }, value: number): string {
   return withUnit(surpriseFigure(value, chart), 'pp');
 }
 
-/** Room right of the plot for the latest value, in px; none in a narrow chart, where it stands inside. */
+/** Room right of the plot for the latest value beside the last bar, in px. */
 export function latestRoom({ surprise }: SurpriseData, chart: ChartOptions): number {
-  if (chart.width < narrowBelow) return 0;
   const value = surprise.findLast((one) => one !== null) ?? 0;
   return Math.max(74, clear + Math.ceil(textWidth(figure({ chart }, value), valueSize, 600)));
 }
@@ -33,38 +31,66 @@ function reach(panel: Panel, data: SurpriseData, left: number, right: number, up
   return farthest;
 }
 
-/** The latest value and its period: beside the last bar, or, in a narrow chart, beyond the last bars. */
-export function latestLabels(panel: Panel, data: SurpriseData): Label[] {
+interface Latest {
+  value: number;
+  figure: Label;
+  period: Label;
+}
+
+/** The latest value and its period, still without a place. */
+function latest(panel: Panel, data: SurpriseData): Latest | null {
   const last = data.surprise.findLastIndex((value) => value !== null);
-  if (last < 0) return [];
+  if (last < 0) return null;
   const value = data.surprise[last]!;
-  const { palette, width } = panel.chart;
+  const { palette } = panel.chart;
   const where = side(value);
   const fill = where === 'level' ? palette.ink : palette[where];
-  const text = figure(panel, value);
-  const period = periodLabel(data.periods[last]!, 'short');
-  const up = value >= 0;
-  if (width < narrowBelow) {
-    const right = panel.right;
-    const left = right - textWidth(text, valueSize, 600) - clear;
-    const bars = reach(panel, data, left, right, up);
-    const edge = rangeEdge(panel, data, left, right, up);
-    const end = up ? Math.min(bars, edge) : Math.max(bars, edge);
-    const y = up ? end - clear - 21 : end + clear + 16;
-    return [
-      { text, x: right, y, fill, anchor: 'end', size: valueSize, weight: 600, halo: palette.paper },
-      { text: period, x: right, y: y + 18, fill: palette.ink2, anchor: 'end', halo: palette.paper },
-    ];
-  }
-  const tip = panel.y(value);
-  const wanted = tip + 7;
-  const y = up
-    ? Math.min(wanted, panel.datumY - clear - 21)
-    : Math.max(wanted, panel.datumY + clear + 14);
+  const at = { x: 0, y: 0 };
+  return {
+    value,
+    figure: { ...at, text: figure(panel, value), fill, size: valueSize, weight: 600 },
+    period: { ...at, text: periodLabel(data.periods[last]!, 'short'), fill: palette.ink2 },
+  };
+}
+
+/** Baselines of figure and period are this far apart. */
+const periodBelow = 18;
+
+/** The latest value and its period beside the last bar, at its tip but never across the datum. */
+export function besideLabels(panel: Panel, data: SurpriseData): Label[] {
+  const found = latest(panel, data);
+  if (found === null) return [];
+  const wanted = panel.y(found.value) + 7;
+  const y =
+    found.value >= 0
+      ? Math.min(wanted, panel.datumY - clear - 3 - periodBelow)
+      : Math.max(wanted, panel.datumY + clear + 14);
   const x = panel.right + clear;
   return [
-    { text, x, y, fill, size: valueSize, weight: 600 },
-    { text: period, x, y: y + 18, fill: palette.ink2 },
+    { ...found.figure, x, y },
+    { ...found.period, x, y: y + periodBelow },
+  ];
+}
+
+/**
+ * The latest value and its period beyond the last bars and the range, at the plot's right edge; null where another
+ * bar keeps them so far from the latest that they would seem to name that one.
+ */
+export function insideLabels(panel: Panel, data: SurpriseData): Label[] | null {
+  const found = latest(panel, data);
+  if (found === null) return [];
+  const up = found.value >= 0;
+  const { right } = panel;
+  const left = right - textWidth(found.figure.text, valueSize, 600) - clear;
+  const bars = reach(panel, data, left, right, up);
+  const edge = rangeEdge(panel, data, left, right, up);
+  const end = up ? Math.min(bars, edge) : Math.max(bars, edge);
+  if (Math.abs(end - panel.y(found.value)) > 48) return null;
+  const y = up ? end - clear - 3 - periodBelow : end + clear + 13;
+  const at = { x: right, anchor: 'end', halo: panel.chart.palette.paper } as const;
+  return [
+    { ...found.figure, ...at, y },
+    { ...found.period, ...at, y: y + periodBelow },
   ];
 }
 
