@@ -1,3 +1,4 @@
+import { builtinModules } from 'node:module';
 import { createTypeScriptImportResolver } from 'eslint-import-resolver-typescript';
 import astro from 'eslint-plugin-astro';
 import { importX } from 'eslint-plugin-import-x';
@@ -73,7 +74,10 @@ export default tseslint.config(
     rules: {
       'no-restricted-imports': [
         'error',
-        { patterns: [{ group: ['node:*'], message: 'econ runs in the browser.' }] },
+        {
+          patterns: [{ group: ['node:*'], message: 'econ runs in the browser.' }],
+          paths: builtinModules.map((name) => ({ name, message: 'econ runs in the browser.' })),
+        },
       ],
       'no-restricted-globals': ['error', 'process', 'Buffer', 'fetch', 'performance', 'Date'],
       'no-restricted-syntax': [
