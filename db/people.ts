@@ -77,6 +77,7 @@ export interface ApiKeyTable {
   updated_at: Date;
   permissions: string | null;
   metadata: string | null;
+  plan: Generated<string>;
 }
 
 /** Tables of sign-in, roles and API keys. */

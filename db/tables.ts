@@ -1,4 +1,5 @@
 import type { ColumnType, Generated, Insertable, JSONColumnType, Selectable } from 'kysely';
+import type { KeyTables } from './keys.ts';
 import type { PeopleTables } from './people.ts';
 
 /** A number that PostgreSQL sends as text so that no digit is lost. */
@@ -169,7 +170,7 @@ export interface DemoSeedTable {
   finished_at: Time | null;
 }
 
-export interface Database extends PeopleTables {
+export interface Database extends PeopleTables, KeyTables {
   economy: EconomyTable;
   series: SeriesTable;
   vintage: VintageTable;
