@@ -40,6 +40,8 @@ export function regressionExpectation(
   if (rule.rule === 'autoregression') path.order = [];
   const window = new UpdatedLeastSquares(k);
   const cumulated = new Float64Array(k);
+  const standardised = new Float64Array(k);
+  const spread = new Float64Array(k);
   for (let s = firstRow; s < first; s++) window.add(rows[s]!, data.growth[s]!);
 
   for (let t = first; t < data.length; t++) {
@@ -55,7 +57,7 @@ export function regressionExpectation(
     const x = rows[t]!;
     const order = chooses ? leastInformation(window, fixed.length, largest) : largest;
     const used = fixed.length + order;
-    const standardised = window.standardise(x);
+    window.standardise(x, standardised);
     let ssr = window.ssr;
     for (let i = used; i < k; i++) ssr += window.component(i) * window.component(i);
     let forecast = 0;
@@ -65,7 +67,7 @@ export function regressionExpectation(
       leverage += standardised[i]! * standardised[i]!;
     }
     for (let j = 0; j < k; j++) cumulated[j] = x[j]! + persistence * cumulated[j]!;
-    const spread = persistence === 0 ? standardised : window.standardise(cumulated);
+    window.standardise(cumulated, spread);
     let pathLeverage = 0;
     for (let i = 0; i < used; i++) pathLeverage += spread[i]! * spread[i]!;
 
@@ -114,7 +116,12 @@ function refactor(
 }
 
 function transpose(columns: Float64Array[], length: number): Float64Array[] {
-  return Array.from({ length }, (_, t) => Float64Array.from(columns, (column) => column[t]!));
+  const k = columns.length;
+  const all = new Float64Array(length * k);
+  columns.forEach((column, j) => {
+    for (let t = 0; t < length; t++) all[t * k + j] = column[t]!;
+  });
+  return Array.from({ length }, (_, t) => all.subarray(t * k, (t + 1) * k));
 }
 
 /** The refusal where the series has fewer levels than the first surprise needs. */

@@ -1,4 +1,4 @@
-import { columnLengths } from './triangular.ts';
+import { columnLengths, solveUpper } from './triangular.ts';
 
 /** Below this ratio of smallest to largest singular value a matrix counts as rank-deficient (method, section 2). */
 export const RANK_TOLERANCE = 1e-10;
@@ -12,34 +12,35 @@ const JACOBI_SWEEPS = 60;
  * Condition of a matrix whose columns were scaled to unit length, from its triangle R: about the largest over
  * the smallest singular value. One solve with R' whose right side is chosen to grow, one with R, O(k²)
  * (Cline, Moler, Stewart & Wilkinson 1979, SIAM J. Numer. Anal. 16:368–375).
+ * @param workspace 3k numbers that may be overwritten; callers in a loop keep them.
  * @returns Infinity for an exactly singular matrix.
  */
-export function estimateCondition(triangle: Float64Array, stride: number, order: number): number {
-  const lengths = columnLengths(triangle, stride, order);
-  const grown = new Float64Array(order);
-  const pending = new Float64Array(order);
-  for (let i = 0; i < order; i++) {
-    const diagonal = Math.abs(triangle[i * stride + i]!) / lengths[i]!;
-    if (!(diagonal > 0)) return Infinity;
-    const value = (pending[i]! + (pending[i]! < 0 ? -1 : 1)) / diagonal;
-    grown[i] = value;
-    const row = i * stride;
-    const sign = triangle[row + i]! < 0 ? -1 : 1;
-    for (let j = i + 1; j < order; j++)
-      pending[j]! -= (sign * triangle[row + j]! * value) / lengths[j]!;
-  }
+export function estimateCondition(
+  triangle: Float64Array,
+  stride: number,
+  order: number,
+  workspace: Float64Array = new Float64Array(3 * order),
+): number {
+  const lengths = columnLengths(triangle, stride, order, workspace.subarray(0, order));
+  const grown = workspace.subarray(order, 2 * order).fill(0);
+  const solution = workspace.subarray(2 * order, 3 * order);
+  // With D the lengths, (R·D⁻¹)'w = e is R'w = De: the columns are scaled without a division in the loops.
   let before = 0;
-  let after = 0;
-  const solution = new Float64Array(order);
-  for (let i = order - 1; i >= 0; i--) {
+  for (let i = 0; i < order; i++) {
     const row = i * stride;
-    const sign = triangle[row + i]! < 0 ? -1 : 1;
-    let sum = grown[i]!;
-    for (let j = i + 1; j < order; j++)
-      sum -= (sign * triangle[row + j]! * solution[j]!) / lengths[j]!;
-    solution[i] = (sum * lengths[i]!) / Math.abs(triangle[row + i]!);
-    before += grown[i]! * grown[i]!;
-    after += solution[i]! * solution[i]!;
+    const diagonal = triangle[row + i]!;
+    if (!(Math.abs(diagonal) > 0)) return Infinity;
+    const sum = grown[i]!;
+    const value = (sum + (sum < 0 ? -lengths[i]! : lengths[i]!)) / diagonal;
+    grown[i] = value;
+    before += value * value;
+    for (let j = i + 1; j < order; j++) grown[j]! -= triangle[row + j]! * value;
+  }
+  solveUpper(triangle, stride, order, grown, solution);
+  let after = 0;
+  for (let i = 0; i < order; i++) {
+    const value = lengths[i]! * solution[i]!;
+    after += value * value;
   }
   const condition = Math.sqrt(order) * Math.sqrt(after / before);
   return condition >= 1 ? condition : after > 0 ? 1 : Infinity;

@@ -1,6 +1,7 @@
 /**
  * Solves R'a = b for the leading `order` rows of an upper triangle.
  * @param triangle Row-major square array with rows of `stride` numbers; below the diagonal it is not read.
+ * @param a Where the result goes; it may be b.
  * @returns a, of `order` numbers.
  */
 export function solveTransposed(
@@ -8,8 +9,8 @@ export function solveTransposed(
   stride: number,
   order: number,
   b: ArrayLike<number>,
+  a: Float64Array = new Float64Array(order),
 ): Float64Array {
-  const a = new Float64Array(order);
   for (let i = 0; i < order; i++) a[i] = b[i]!;
   for (let i = 0; i < order; i++) {
     const row = i * stride;
@@ -20,14 +21,14 @@ export function solveTransposed(
   return a;
 }
 
-/** Solves R x = b for the leading `order` rows of an upper triangle stored as in {@link solveTransposed}. */
+/** Solves R x = b for the leading `order` rows of an upper triangle stored as in {@link solveTransposed}; x may be b. */
 export function solveUpper(
   triangle: Float64Array,
   stride: number,
   order: number,
   b: ArrayLike<number>,
+  x: Float64Array = new Float64Array(order),
 ): Float64Array {
-  const x = new Float64Array(order);
   for (let i = order - 1; i >= 0; i--) {
     const row = i * stride;
     let sum = b[i]!;
@@ -38,11 +39,17 @@ export function solveUpper(
 }
 
 /** Lengths of the columns of an upper triangle, which are those of the matrix it was factored from. */
-export function columnLengths(triangle: Float64Array, stride: number, order: number): Float64Array {
-  const squares = new Float64Array(order);
+export function columnLengths(
+  triangle: Float64Array,
+  stride: number,
+  order: number,
+  lengths: Float64Array = new Float64Array(order),
+): Float64Array {
+  lengths.fill(0, 0, order);
   for (let i = 0; i < order; i++) {
-    for (let j = i; j < order; j++)
-      squares[j]! += triangle[i * stride + j]! * triangle[i * stride + j]!;
+    const row = i * stride;
+    for (let j = i; j < order; j++) lengths[j]! += triangle[row + j]! * triangle[row + j]!;
   }
-  return squares.map((square) => Math.sqrt(square));
+  for (let j = 0; j < order; j++) lengths[j] = Math.sqrt(lengths[j]!);
+  return lengths;
 }

@@ -22,10 +22,12 @@ export class UpdatedLeastSquares {
   private readonly triangle: Float64Array;
   private readonly row: Float64Array;
   private readonly cosines: Float64Array;
+  private readonly sines: Float64Array;
+  private readonly workspace: Float64Array;
   private removals = 0;
   private spoilt = false;
   private largestSsr = 0;
-  private largestLengths: Float64Array;
+  private readonly largestLengths: Float64Array;
   private knownCondition: number | null = null;
 
   constructor(coefficients: number) {
@@ -34,6 +36,8 @@ export class UpdatedLeastSquares {
     this.triangle = new Float64Array(coefficients * this.stride);
     this.row = new Float64Array(this.stride);
     this.cosines = new Float64Array(coefficients);
+    this.sines = new Float64Array(coefficients);
+    this.workspace = new Float64Array(3 * coefficients);
     this.largestLengths = new Float64Array(coefficients);
   }
 
@@ -65,14 +69,14 @@ export class UpdatedLeastSquares {
   /** Removes an observation that was added before. Where too few digits survive, `accurate` turns false. */
   remove(regressors: ArrayLike<number>, y: number): void {
     const { triangle, row, cosines, stride, coefficients: k } = this;
-    if (this.removals === 0) this.largestLengths = columnLengths(triangle, stride, k);
+    if (this.removals === 0) columnLengths(triangle, stride, k, this.largestLengths);
     this.largestSsr = Math.max(this.largestSsr, this.ssr);
     this.removals++;
     this.observations--;
     this.knownCondition = null;
-    const sines = solveTransposed(triangle, stride, k, regressors);
+    const sines = solveTransposed(triangle, stride, k, regressors, this.sines);
     let squared = 0;
-    for (const sine of sines) squared += sine * sine;
+    for (let i = 0; i < k; i++) squared += sines[i]! * sines[i]!;
     if (!(1 - squared > SMALLEST_REMAINDER)) {
       this.spoilt = true;
       return;
@@ -122,9 +126,10 @@ export class UpdatedLeastSquares {
   get accurate(): boolean {
     if (this.spoilt) return false;
     if (this.removals === 0) return true;
-    const lengths = columnLengths(this.triangle, this.stride, this.coefficients);
+    const { triangle, stride, coefficients, workspace } = this;
+    const lengths = columnLengths(triangle, stride, coefficients, workspace);
     let shrinkage = 1;
-    for (let j = 0; j < lengths.length; j++) {
+    for (let j = 0; j < coefficients; j++) {
       shrinkage = Math.max(shrinkage, this.largestLengths[j]! / lengths[j]!);
     }
     const { condition } = this;
@@ -136,7 +141,8 @@ export class UpdatedLeastSquares {
 
   /** Estimated condition of the regressors, columns scaled to unit length. */
   get condition(): number {
-    this.knownCondition ??= estimateCondition(this.triangle, this.stride, this.coefficients);
+    const { triangle, stride, coefficients, workspace } = this;
+    this.knownCondition ??= estimateCondition(triangle, stride, coefficients, workspace);
     return this.knownCondition;
   }
 
@@ -144,9 +150,12 @@ export class UpdatedLeastSquares {
     return isRankDeficient(this.triangle, this.stride, this.coefficients, this.condition);
   }
 
-  /** R⁻ᵀx for a regressor row x: its squared length is x'(X'X)⁻¹x, and likewise for leading columns alone. */
-  standardise(x: ArrayLike<number>): Float64Array {
-    return solveTransposed(this.triangle, this.stride, this.coefficients, x);
+  /**
+   * R⁻ᵀx for a regressor row x, written to `result`: its squared length is x'(X'X)⁻¹x, and likewise for leading
+   * columns alone.
+   */
+  standardise(x: ArrayLike<number>, result: Float64Array): void {
+    solveTransposed(this.triangle, this.stride, this.coefficients, x, result);
   }
 
   /** The part of y along column i, orthogonal to the columns before it. */
