@@ -1,0 +1,152 @@
+import { spawnSync } from 'node:child_process';
+import { compute } from '../../src/lib/econ/compute.ts';
+import {
+  regressionExpectation,
+  type RegressionRule,
+} from '../../src/lib/econ/expectations/regression.ts';
+import { factorise } from '../../src/lib/econ/linear/householder.ts';
+import { constant, equation } from '../../src/lib/econ/linear/equation.ts';
+import { solve } from '../../src/lib/econ/linear/leastSquares.ts';
+import { indicators, lagged, prepare, type Data } from '../../src/lib/econ/series.ts';
+import type { ComputeRequest, Expectation } from '../../src/lib/econ/types.ts';
+
+/** Runs a measurement is taken over, after as many to warm up. */
+const RUNS = 21;
+const YEARS = 65;
+
+const window = { kind: 'expanding', length: 60 } as const;
+const plain: RegressionRule = { rule: 'autoregression', order: 12, window };
+const seasonal: RegressionRule = { ...plain, seasonal: 'dummies' };
+const chosen: RegressionRule = { ...seasonal, order: { criterion: 'bic', max: 12 } };
+
+/** Minimum and median time of a piece of work, in milliseconds. */
+function measure(work: () => void, runs = RUNS): { least: number; median: number } {
+  const times: number[] = [];
+  for (let i = 0; i < 2 * runs; i++) {
+    const start = performance.now();
+    work();
+    if (i >= runs) times.push(performance.now() - start);
+  }
+  times.sort((a, b) => a - b);
+  return { least: times[0]!, median: times[Math.floor(times.length / 2)]! };
+}
+
+/** A made-up monthly economy of so many years, from a fixed seed. */
+function economy(years: number): ComputeRequest {
+  let state = 20_311_001;
+  const uniform = () => {
+    state = (state * 48_271) % 2_147_483_647;
+    return state / 2_147_483_647 - 0.5;
+  };
+  const n = 12 * years;
+  const levels = (drift: number, spread: number) => {
+    let log = 460;
+    return Array.from({ length: n }, () => Math.exp((log += drift + spread * uniform()) / 100));
+  };
+  return {
+    frequency: 'monthly',
+    money: { start: '1960-01', values: levels(0.5, 2) },
+    prices: { start: '1960-01', values: levels(0.3, 1) },
+    activity: { start: '1960-01', values: levels(0.2, 1) },
+    expectation: plain,
+    slope: { method: 'prices' },
+    gap: { persistence: 'estimated' },
+  };
+}
+
+/** What the updating replaces: a fresh QR of the whole window at every target. Returns the sum of the forecasts. */
+function refit(data: Data, rule: RegressionRule & { order: number }): number {
+  const lags = Array.from({ length: rule.order }, (_, j) => lagged(data.growth, j + 1));
+  const fixed = [constant(data.length), ...(rule.seasonal === 'dummies' ? indicators(data) : [])];
+  const { y, columns } = equation(data.growth, [...fixed, ...lags]);
+  let sum = 0;
+  for (let n = rule.window.length; n < y.length; n++) {
+    const { coefficients } = solve(
+      factorise(columns.map((column) => column.subarray(0, n))),
+      y.subarray(0, n),
+    );
+    coefficients.forEach((b, j) => (sum += b * columns[j]![n]!));
+  }
+  return sum;
+}
+
+function line(what: string, time: { least: number; median: number }, more = ''): void {
+  const figures = `${time.least.toFixed(2).padStart(8)} ms least ${time.median.toFixed(2).padStart(8)} ms median`;
+  console.log(`${what.padEnd(64)}${figures}${more && `   ${more}`}`);
+}
+
+function compareWithRefitting(
+  what: string,
+  data: Data,
+  rule: RegressionRule & { order: number },
+): number {
+  const updating = measure(() => void regressionExpectation(data, rule, 0));
+  const refitting = measure(() => void refit(data, rule), 3);
+  const path = regressionExpectation(data, rule, 0);
+  const difference = Math.abs(
+    path.expected.reduce((sum, value) => sum + value, 0) - refit(data, rule),
+  );
+  line(`${what}, updated`, updating);
+  line(`${what}, refitted by QR at each target`, refitting);
+  const ratio = refitting.least / updating.least;
+  console.log(
+    `  updating is ${ratio.toFixed(1)} times as fast; sums of forecasts differ by ${difference.toExponential(1)}`,
+  );
+  return ratio;
+}
+
+/** The same refitting by R's lm.fit, in milliseconds; null where there is no R. */
+function timeOfR(data: Data, order: number): number | null {
+  if (spawnSync('Rscript', ['--version']).error !== undefined) return null;
+  const script = `
+    d <- scan(file("stdin"), quiet = TRUE); P <- ${order}; T <- length(d)
+    m <- factor((seq_len(T)) %% 12); D <- model.matrix(~ m)
+    X <- cbind(D, sapply(1:P, function(j) c(rep(NA, j), d[1:(T - j)])))[(P + 1):T, ]; y <- d[(P + 1):T]
+    run <- function() for (n in ${window.length}:(length(y) - 1)) { i <- seq_len(n); b <- lm.fit(X[i, ], y[i])$coefficients; sum(b * X[n + 1, ]) }
+    run(); cat(min(replicate(3, system.time(run())["elapsed"])) * 1000)`;
+  const input = Array.from(data.growth.subarray(1)).join('\n');
+  const { status, stdout } = spawnSync('Rscript', ['-e', script], { input, encoding: 'utf8' });
+  return status === 0 ? Number(stdout) : null;
+}
+
+const request = economy(YEARS);
+const data = prepare(request);
+const twice = prepare(economy(2 * YEARS));
+
+console.log(`${YEARS} years monthly, every target from month ${window.length} on; ${RUNS} runs\n`);
+compareWithRefitting('AR(12)', data, plain as RegressionRule & { order: number });
+compareWithRefitting(
+  'AR(12) with seasonal indicators',
+  data,
+  seasonal as RegressionRule & { order: number },
+);
+line(
+  'Order 0 to 12 by BIC at every target, seasonal indicators',
+  measure(() => void regressionExpectation(data, chosen, 0)),
+);
+const once = measure(() => void regressionExpectation(data, seasonal, 0));
+const doubled = measure(() => void regressionExpectation(twice, seasonal, 0));
+line(
+  'AR(12) with seasonal indicators, twice the years',
+  doubled,
+  `${(doubled.least / once.least).toFixed(2)} times`,
+);
+const rolling: Expectation = { ...seasonal, window: { kind: 'rolling', length: 120 } };
+line(
+  'AR(12) with seasonal indicators, rolling 120',
+  measure(() => void regressionExpectation(data, rolling, 0)),
+);
+line(
+  'The whole computation: BIC, prices, activity, every test',
+  measure(() => void compute({ ...request, expectation: chosen })),
+);
+
+const inR = timeOfR(data, 12);
+if (inR === null)
+  console.log(
+    "Rscript is not at hand: R's lm.fit is left out. (Debian: apt-get install r-base-core)",
+  );
+else
+  console.log(
+    `The same by R's lm.fit at each target: ${inR.toFixed(0)} ms, ${(inR / once.least).toFixed(0)} times the updating.`,
+  );
