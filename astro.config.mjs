@@ -2,6 +2,7 @@ import node from '@astrojs/node';
 import tailwindcss from '@tailwindcss/vite';
 import { defineConfig } from 'astro/config';
 import { buildId } from './src/commands/sources.mjs';
+import { fonts } from './src/lib/fonts/integration.mjs';
 
 /**
  * The node adapter with our own server in its place, so that server, API and pages are one module graph with one
@@ -33,6 +34,7 @@ export default defineConfig({
   output: 'server',
   trailingSlash: 'ignore',
   adapter: slackwater(),
+  integrations: [fonts()],
   // Styles and scripts are files: the content policy allows nothing inline.
   build: { inlineStylesheets: 'never' },
   devToolbar: { enabled: false },
