@@ -1,5 +1,10 @@
 import { PERIODS_A_YEAR } from '../../lib/econ/periods.ts';
 import type { Frequency } from '../../lib/econ/types.ts';
+import {
+  releaseFile as fileOfRelease,
+  seriesFile as fileOfSeries,
+} from '../../lib/publication/plan.ts';
+import { seriesId } from '../../lib/services/series/concepts.ts';
 
 interface Addressed {
   id: string;
@@ -27,18 +32,11 @@ export const monthImage = (release: Pick<Addressed, 'economyCode' | 'period'>) =
   `/images/${release.economyCode}/${release.period}/surprise-wide.png`;
 
 /** A file frozen with the release. */
-export const releaseFile = ({ id }: Pick<Addressed, 'id'>, name: string) =>
-  `/data/releases/${id}/${name}`;
-
-const letters: Record<Frequency, string> = { monthly: 'M', quarterly: 'Q', annual: 'A' };
-
-/** The id of a published series, such as `XAL.money_surprise.M`. */
-export const seriesId = (code: string, concept: string, frequency: Frequency) =>
-  `${code}.${concept}.${letters[frequency]}`;
+export const releaseFile = ({ id }: Pick<Addressed, 'id'>, name: string) => fileOfRelease(id, name);
 
 /** The latest published values of a series. */
 export const seriesFile = (code: string, concept: string, frequency: Frequency) =>
-  `/data/${seriesId(code, concept, frequency)}.csv`;
+  fileOfSeries(seriesId(code, concept, frequency));
 
 /** How many periods make the "two years" that tables and small bars show: two years, or all of a short annual history. */
 export const twoYears = (frequency: Frequency) => Math.max(2 * PERIODS_A_YEAR[frequency], 8);

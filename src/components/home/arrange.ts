@@ -1,4 +1,5 @@
 import { type GaugeScale, gaugeScale } from '../../lib/charts/gauge.ts';
+import { addPeriods, periodsFrom } from '../../lib/econ/periods.ts';
 import type { Column } from './load.ts';
 
 /** A row of gauges on one scale: columns that are out from the highest to the lowest, then the others by due date. */
@@ -18,6 +19,14 @@ export function historyOf({ release }: Column, count: number) {
     forecast_se: cut(result?.forecast_se),
     standardised_surprise: cut(result?.standardised_surprise),
   };
+}
+
+/** The surprises of the `count` periods up to `month`; null where a period is not out. */
+export function surprisesTo(column: Column, month: string, count: number) {
+  const { periods, surprise } = historyOf(column, count);
+  const known = new Map(periods.map((period, i) => [period, surprise[i] ?? null]));
+  const shown = periodsFrom(addPeriods(month, 1 - count), count, 'monthly');
+  return { periods: shown, surprise: shown.map((period) => known.get(period) ?? null) };
 }
 
 /** Orders the columns of a month and finds the scale they share. */

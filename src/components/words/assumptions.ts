@@ -1,7 +1,6 @@
 import { range, unsigned } from '../../lib/charts/figures.ts';
 import type {
   Assumptions,
-  ComputeRequest,
   ComputeResult,
   Expectation,
   Frequency,
@@ -82,11 +81,6 @@ export function timingWords(
   if (timing === 'end') return `end of ${nouns[frequency]}`;
   if (timing === 'average') return `average over the ${nouns[frequency]}`;
   return 'timing not stated';
-}
-
-/** The house sentence on timing: "The expectation uses months to July, as revised in this vintage." */
-export function timingSentence(request: Pick<ComputeRequest, 'frequency'>, before: string): string {
-  return `The expectation uses ${nouns[request.frequency]}s to ${before}, as revised in this vintage.`;
 }
 
 /** A p-value as pages print it: "p = 0.23", "p < 0.001". */

@@ -1,7 +1,8 @@
 import { unsigned } from '../../lib/charts/figures.ts';
 import type { ComputeRequest, ComputeResult } from '../../lib/econ/types.ts';
 import { pValue, shareWords } from './assumptions.ts';
-import { gateLevel, isRejected, persistenceInUse } from './reading.ts';
+import { GATE_LEVEL, isGapAssumption } from '../../lib/services/releases/sentences.ts';
+import { persistenceInUse } from './reading.ts';
 
 /** One thing the data say about the model: in words first, then the numbers. */
 export interface Finding {
@@ -46,12 +47,12 @@ function neutrality(
   const numbers = `Wald statistic ${unsigned(test.statistic, 1)} on ${restrictions} restriction${
     restrictions === 1 ? '' : 's'
   }, ${pValue(test.p)}.`;
-  if (!isRejected(result)) {
+  if (!isGapAssumption(result)) {
     return {
       title,
       words:
         `The model says that money which was expected moves prices one for one. Prices in ${nameInText} ` +
-        `do not contradict it at the ${100 * gateLevel}% level.${blindSpot(request)}`,
+        `do not contradict it at the ${100 * GATE_LEVEL}% level.${blindSpot(request)}`,
       numbers,
     };
   }
@@ -59,7 +60,7 @@ function neutrality(
     title,
     words:
       `The model says that money which was expected moves prices one for one. Prices in ${nameInText} ` +
-      `contradict it at the ${100 * gateLevel}% level, so the gap is not published as an estimate.${weakness(request, result)}`,
+      `contradict it at the ${100 * GATE_LEVEL}% level, so the gap is not published as an estimate.${weakness(request, result)}`,
     numbers,
   };
 }
@@ -126,7 +127,7 @@ function calibration({ diagnostics }: ComputeResult): Finding | null {
   const { surprise, ljung_box } = diagnostics;
   if (!surprise || surprise.mean_t === null) return null;
   const centred = Math.abs(surprise.mean_t) < 2;
-  const pattern = (ljung_box?.p ?? 1) < gateLevel;
+  const pattern = (ljung_box?.p ?? 1) < GATE_LEVEL;
   const words =
     `Over the whole history the surprises ${centred ? 'average out' : 'do not average out'}` +
     (pattern

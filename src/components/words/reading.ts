@@ -1,5 +1,10 @@
 import type { ComputeRequest, ComputeResult } from '../../lib/econ/types.ts';
-import { periodNoun } from '../../lib/charts/periodLabels.ts';
+import {
+  gapWording,
+  hasPersistence,
+  isGapAssumption,
+} from '../../lib/services/releases/sentences.ts';
+import { capitalised } from './counting.ts';
 
 /** What may be said of a gap: `none` where the estimate lies outside the model or nothing is shown yet. */
 export type GapStanding = 'estimate' | 'assumption' | 'outside' | 'none';
@@ -22,18 +27,11 @@ export interface Reading {
   standing: GapStanding;
   /** Without persistence what is shown is not a gap. */
   persistent: boolean;
+  /** What the effect on output is called: a gap only where there is persistence. */
+  name: string;
   /** The persistence in use; 0 for none, null where it was to be estimated and is not known. */
   rho: number | null;
   confidence: number;
-}
-
-/** The significance at which the model's own test closes the gate. */
-export const gateLevel = 0.01;
-
-/** Whether the neutrality test rejects at 1%, so that the gap is an assumption and not an estimate. */
-export function isRejected(result: Pick<ComputeResult, 'diagnostics'>): boolean {
-  const p = result.diagnostics.neutrality?.p ?? null;
-  return p !== null && p < gateLevel;
 }
 
 /** The persistence a computation used: none is 0; an estimate comes from its result. */
@@ -62,7 +60,7 @@ export function readingOf({
   const previousSurprise = result.surprise[at - 1] ?? null;
   const rho = persistenceInUse(request, result);
   const gap = result.gap?.[at] ?? null;
-  const rejected = isRejected(result);
+  const rejected = isGapAssumption(result);
   return {
     period,
     growth: result.growth[at]!,
@@ -83,15 +81,9 @@ export function readingOf({
         : rejected
           ? 'assumption'
           : 'estimate',
-    persistent: rho !== 0,
+    persistent: hasPersistence(request),
+    name: capitalised(gapWording(request, period)),
     rho,
     confidence: request.confidence ?? 0.8,
   };
-}
-
-/** What the page calls what the surprise does to output: a gap only where there is persistence. */
-export function gapName(reading: Pick<Reading, 'persistent' | 'period'>): string {
-  return reading.persistent
-    ? 'Implied output gap'
-    : `Same-${periodNoun(reading.period)} output effect of the surprise`;
 }
