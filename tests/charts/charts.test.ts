@@ -118,6 +118,23 @@ describe('gauge', () => {
     expect(svg).not.toContain('<text');
   });
 
+  it.each([
+    [184, 0.84, 38],
+    [168, 12.34, 32],
+    [130, 0.84, 26],
+    [52, 0.84, null],
+  ])('at %i px prints %d at a size that fits, or leaves it to the page', (width, value, size) => {
+    const history = { surprise: [value], forecast_se: [0.45], standardised_surprise: [value] };
+    const { svg } = gauge({
+      ...drawing,
+      width,
+      scale: { unit: 'pp', domain: 15 },
+      data: { ...gaugeData, history },
+    });
+    const found = /font-size="(\d+)" font-weight="300"/.exec(svg)?.[1];
+    expect(found === undefined ? null : Number(found)).toBe(size);
+  });
+
   it.each([0.84, 0.02, 0, -0.004, -0.03, -0.33, -1.2])('keeps %d off the datum', (value) => {
     const history = { surprise: [value], forecast_se: [0.45], standardised_surprise: [value] };
     const chart = gauge({

@@ -88,7 +88,8 @@ export function gauge(options: GaugeOptions): Chart {
   const { y, datumY, height } = frame;
   const reading = read(data.history, scale);
   const colour = reading.side === 'level' ? palette.ink : palette[reading.side];
-  const size = figureSize(width - left);
+  const text = reading.value === null ? '' : figure(reading.value, options);
+  const size = figureSize(text, width - left);
   const labels: Label[] = labelled ? tickLabels(options, scale, left - scaleLeft - 4, y) : [];
   const svg = drawSvg({
     chart: options,
@@ -107,12 +108,7 @@ export function gauge(options: GaugeOptions): Chart {
     over:
       size === null || reading.value === null
         ? ''
-        : figureText(
-            figure(reading.value, options),
-            reading.value,
-            { x: left + 43, size, fill: colour },
-            frame,
-          ),
+        : figureText(text, reading.value, { x: left + figureLeft, size, fill: colour }, frame),
   });
   return { svg, width, height, datumY };
 }
@@ -225,9 +221,16 @@ export function needle(tip: number, datumY: number, left: number, colour: string
   };
 }
 
+/** Room for the scale, the range and the previous periods before the figure, in px. */
+const figureLeft = 43;
+
+/** Widest that Merriweather's signs and figures are on average, in em. */
+const figureAdvance = 0.6;
+
 /** Type size of the figure beside the cap, or none where the column is too narrow and the page prints it. */
-function figureSize(room: number): number | null {
-  return room >= 145 ? 38 : room >= 112 ? 26 : null;
+function figureSize(text: string, room: number): number | null {
+  const fits = (size: number) => figureLeft + figureAdvance * size * text.length <= room;
+  return [38, 32, 26, 22].find(fits) ?? null;
 }
 
 function figure(value: number, { scale, decimalMark }: GaugeOptions): string {

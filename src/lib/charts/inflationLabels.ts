@@ -2,7 +2,7 @@ import { parsePeriod, seasonOf } from '../econ/periods.ts';
 import { accountingFigure } from './figures.ts';
 import { partNames } from './inflationParts.ts';
 import type { InflationData, Part } from './inflationParts.ts';
-import { baselineAt, labelSize, spread } from './labels.ts';
+import { baselineAt, labelBox, labelSize, overlap, spread } from './labels.ts';
 import type { Label } from './labels.ts';
 import { monthName } from './periodLabels.ts';
 import type { ChartOptions } from './svg.ts';
@@ -117,17 +117,18 @@ export function periodLabels(
   });
   const widest = Math.max(...parts.map(({ name }) => textWidth(name, labelSize)));
   const labels: Label[] = [];
-  let freeFrom = -Infinity;
+  const years: Label[] = [];
   for (const [i, { season, year, name }] of parts.entries()) {
     const at = { x: place.x(i + 0.5), fill: place.fill, anchor: 'middle' } as const;
     // All names are cut to their first letter or none is: a mixture would be hard to read.
     const text = widest + 4 <= column ? name : name.slice(0, 1);
     if (text !== '') labels.push({ ...at, y: place.y, text });
-    const half = textWidth(year, labelSize) / 2;
-    if ((i === 0 || season === 0) && at.x - half >= freeFrom) {
-      labels.push({ ...at, y: place.y + (text === '' ? 0 : 16), text: year });
-      freeFrom = at.x + half + 8;
-    }
+    if (i !== 0 && season !== 0) continue;
+    const label: Label = { ...at, y: place.y + (text === '' ? 0 : 16), text: year };
+    const before = years.at(-1);
+    if (before === undefined || !overlap(labelBox(before), labelBox(label), 6)) years.push(label);
+    // A year that starts here matters more than the first column's, in which it does not start.
+    else if (years.length === 1 && parts[0]!.season !== 0) years[0] = label;
   }
-  return labels;
+  return [...labels, ...years];
 }

@@ -76,6 +76,9 @@ export function drawMarks(
     .join('');
 }
 
+/** Plot moves strokes by half a pixel, but only on a screen of single density; our datum lies on the half already. */
+const halfPixel = /^translate\(0(\.5)?,\s?0(\.5)?\)$/;
+
 /**
  * Written out here and not by the document: the content policy forbids style attributes, a page may not
  * repeat Plot's class names, and coordinates of two places keep stored pages small and alike everywhere.
@@ -83,6 +86,7 @@ export function drawMarks(
 function markup(element: Element): string {
   const attributes = [...element.attributes]
     .filter(({ name }) => !/^(style|class|aria-|xmlns)/.test(name))
+    .filter(({ name, value }) => name !== 'transform' || !halfPixel.test(value))
     .sort((a, b) => (a.name < b.name ? -1 : 1))
     .map(({ name, value }) => ` ${name}="${escape(value.replace(/-?\d+\.\d+/g, twoPlaces))}"`)
     .join('');
