@@ -1,8 +1,7 @@
 import { type Side, side } from '../src/lib/charts/figures.ts';
+import { facts } from '../src/lib/econ/facts.ts';
+import { periodDifference } from '../src/lib/econ/periods.ts';
 import type { ComputeResult } from '../src/lib/econ/types.ts';
-
-/** Neutrality rejected below this: the gap is then an assumption. */
-const REJECTED_BELOW = 0.01;
 
 /** Below this |t| prices show no detectable response. */
 const NO_RESPONSE_T = 2;
@@ -15,16 +14,11 @@ export interface Reading {
   side: Side;
   standardised: number | null;
   cumulated: number | null;
-  /** Months up to this one in a row on its side of the datum. */
+  /** Months up to this one in a row on its side of the datum, level ones breaking the row. */
   monthsOnSide: number;
-  /** The last earlier month with a surprise at least as large on the same side; null where there is none. */
-  largestSince: string | null;
-  /** How many months lie between that month and this one; between the first and this one where there is none. */
-  monthsSince: number;
-  firstPeriod: string;
+  /** The last earlier month with a surprise at least as large on the same side, or the first month; null if level. */
+  largestSince: { period: string; isFirst: boolean; months: number } | null;
   gap: { value: number; lower: number | null; upper: number | null } | null;
-  /** The model's own test fails, so the gap is an assumption. */
-  gated: boolean;
   pricesIgnoreMoney: boolean;
   inflation: {
     actual: number;
@@ -39,10 +33,8 @@ export function readLastMonth(result: ComputeResult): Reading {
   const last = result.periods.length - 1;
   const surprise = result.surprise[last]!;
   const here = side(surprise);
-  const { slope, diagnostics, inflation } = result;
-  const larger = lastLarger(result.surprise, here);
   const gap = result.gap?.[last] ?? null;
-  const p = diagnostics.neutrality?.p ?? null;
+  const { no_response } = result.slope;
   return {
     growth: result.growth[last]!,
     expected: result.expected_growth[last]!,
@@ -51,9 +43,7 @@ export function readLastMonth(result: ComputeResult): Reading {
     standardised: result.standardised_surprise[last] ?? null,
     cumulated: result.cumulated_surprise[last] ?? null,
     monthsOnSide: runLength(result.surprise, here),
-    largestSince: larger === null ? null : result.periods[larger]!,
-    monthsSince: last - (larger ?? 0),
-    firstPeriod: result.periods[0]!,
+    largestSince: here === 'level' ? null : largestSince(result),
     gap:
       gap === null
         ? null
@@ -62,10 +52,17 @@ export function readLastMonth(result: ComputeResult): Reading {
             lower: result.gap_lower?.[last] ?? null,
             upper: result.gap_upper?.[last] ?? null,
           },
-    gated: p !== null && p < REJECTED_BELOW,
-    pricesIgnoreMoney: slope.no_response !== null && Math.abs(slope.no_response.t) < NO_RESPONSE_T,
-    inflation: partsOfInflation(inflation, last),
+    pricesIgnoreMoney: no_response !== null && Math.abs(no_response.t) < NO_RESPONSE_T,
+    inflation: partsOfInflation(result.inflation, last),
   };
+}
+
+function largestSince(result: ComputeResult): Reading['largestSince'] {
+  const { period, surprise } = facts(result);
+  if (!surprise.largest_since) return null;
+  const { period: larger, from } = surprise.largest_since;
+  const since = larger ?? from;
+  return { period: since, isFirst: larger === null, months: periodDifference(since, period) };
 }
 
 function partsOfInflation(
@@ -85,12 +82,4 @@ function runLength(surprises: number[], here: Side): number {
   let length = 0;
   while (length < surprises.length && side(surprises.at(-1 - length)!) === here) length++;
   return length;
-}
-
-function lastLarger(surprises: number[], here: Side): number | null {
-  const size = Math.abs(surprises.at(-1)!);
-  for (let i = surprises.length - 2; i >= 0; i--) {
-    if (side(surprises[i]!) === here && Math.abs(surprises[i]!) >= size) return i;
-  }
-  return null;
 }

@@ -132,15 +132,8 @@ function releaseSteps(
     {
       at: times.written,
       async work() {
-        const { code, nameInText } = economy;
-        const { gap } = economy.assumptions;
-        const words = releaseWords({
-          code,
-          nameInText,
-          period,
-          result,
-          persistence: gap?.persistence,
-        });
+        const { code, nameInText, assumptions } = economy;
+        const words = releaseWords({ code, nameInText, period, result, assumptions });
         await writeRelease(as(editor), { id, version: await version(editor), ...words });
       },
     },

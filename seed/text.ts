@@ -6,7 +6,12 @@ import {
   unsigned,
 } from '../src/lib/charts/figures.ts';
 import { addPeriods } from '../src/lib/econ/periods.ts';
-import type { ComputeResult, Gap } from '../src/lib/econ/types.ts';
+import type { Assumptions, ComputeResult } from '../src/lib/econ/types.ts';
+import {
+  gapSentence as gapNotice,
+  hasPersistence,
+  timingSentence,
+} from '../src/lib/services/releases/sentences.ts';
 import { type Reading, readLastMonth } from './reading.ts';
 import {
   atStart,
@@ -35,7 +40,7 @@ export interface ReleaseToWrite {
   nameInText: string;
   period: string;
   result: ComputeResult;
-  persistence: Gap['persistence'];
+  assumptions: Pick<Assumptions, 'gap'>;
 }
 
 interface Context extends ReleaseToWrite {
@@ -58,7 +63,10 @@ export function releaseWords(release: ReleaseToWrite): ReleaseWords {
     gapSentence(context),
     lastSentence(context),
   ];
-  return { headline: headline(context), explainer: sentences.join(' ') };
+  return {
+    headline: headline(context),
+    explainer: sentences.filter((sentence) => sentence !== '').join(' '),
+  };
 }
 
 function monthOf(period: string): string {
@@ -132,10 +140,10 @@ function sizeSentence(context: Context): string {
   const { code, period, reading } = context;
   const { side, surprise, standardised, cumulated, monthsOnSide } = reading;
   if (side === 'level') return levelSentence(context);
-  if (reading.monthsSince >= MONTHS_TO_RECORD) {
-    const since = reading.largestSince
-      ? `since ${periodLabel(reading.largestSince)}`
-      : `since the series begins in ${periodLabel(reading.firstPeriod)}`;
+  const { largestSince } = reading;
+  if (largestSince && largestSince.months >= MONTHS_TO_RECORD) {
+    const month = periodLabel(largestSince.period);
+    const since = largestSince.isFirst ? `since the series begins in ${month}` : `since ${month}`;
     return `The surprise, ${logPoints(surprise)}, is the largest ${side} expectation ${since}.`;
   }
   const place = placeInWords(monthsOnSide);
@@ -180,17 +188,14 @@ function levelSentence({ code, period, reading: { surprise, cumulated } }: Conte
 }
 
 function gapSentence(context: Context): string {
-  const { nameInText, persistence, reading } = context;
-  if (reading.gap === null) {
-    return 'The estimates lie outside the model, so no gap is implied this month.';
-  }
-  if (reading.gated) {
-    return `Prices in ${nameInText} do not behave as the model requires; the gap is an assumption, not an estimate.`;
-  }
+  const { nameInText, assumptions, result, reading } = context;
+  const notice = gapNotice(result, nameInText);
+  if (notice) return notice;
+  if (reading.gap === null) return '';
   const { value, lower, upper } = reading.gap;
   const band =
     lower !== null && upper !== null ? `, within a band of ${bandInWords(lower, upper)}` : '';
-  if (persistence === undefined || persistence === 'none') {
+  if (!hasPersistence(assumptions)) {
     return `The same-month output effect of the surprise is ${perCent(value, 1)} ${sideOfTrend(value)}${band}.`;
   }
   return `${gapInWords(context, value)}${band}.`;
@@ -222,11 +227,12 @@ function sideOfTrend(value: number): string {
   return value < 0 ? 'below trend' : 'above trend';
 }
 
-function lastSentence({ code, period, month, previousMonth, reading }: Context): string {
-  const timing = `The expectation uses months to ${previousMonth}, as revised in this vintage.`;
-  const { inflation } = reading;
-  if (reading.gated) {
-    return reading.pricesIgnoreMoney && reading.gap !== null
+function lastSentence({ code, nameInText, period, month, result, reading }: Context): string {
+  const { inflation, pricesIgnoreMoney } = reading;
+  const timing = timingSentence(period);
+  if (gapNotice(result, nameInText)) {
+    // "They" are the prices that the notice begins with.
+    return pricesIgnoreMoney && result.slope.within_model
       ? 'They show no detectable response to money within the month.'
       : timing;
   }

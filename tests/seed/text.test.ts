@@ -35,7 +35,7 @@ const releases: Written[] = demoEconomies.flatMap(
       const release = { code, nameInText, period: addPeriods(START, 336 + i), result };
       return {
         ...release,
-        ...releaseWords({ ...release, persistence: assumptions.gap?.persistence }),
+        ...releaseWords({ ...release, assumptions }),
       };
     });
   },
@@ -125,8 +125,8 @@ describe('the words of a release', () => {
 
   test('are the same whenever they are written', () => {
     const last = releases.at(-1)!;
-    expect(releaseWords({ ...last, persistence: 0.9 })).toEqual(
-      releaseWords({ ...last, persistence: 0.9 }),
+    expect(releaseWords({ ...last, assumptions: { gap: { persistence: 0.9 } } })).toEqual(
+      releaseWords({ ...last, assumptions: { gap: { persistence: 0.9 } } }),
     );
   });
 });
@@ -134,12 +134,18 @@ describe('the words of a release', () => {
 describe('the words of what a demo month may not bring', () => {
   const { result, ...last } = releases.find(({ code }) => code === 'XAL')!;
   const changed = (change: Partial<ComputeResult>) =>
-    releaseWords({ ...last, result: { ...result, ...change }, persistence: 0.93 });
+    releaseWords({
+      ...last,
+      result: { ...result, ...change },
+      assumptions: { gap: { persistence: 0.93 } },
+    });
   const lastOf = (values: number[], value: number) => [...values.slice(0, -1), value];
 
   test('no gap outside the model', () => {
-    const { explainer } = changed({ gap: null, gap_lower: null, gap_upper: null, inflation: null });
-    expect(explainer).toContain('The estimates lie outside the model, so no gap is implied');
+    const outside = { gap: null, gap_lower: null, gap_upper: null, inflation: null };
+    const { explainer } = changed({ ...outside, slope: { ...result.slope, within_model: false } });
+    expect(explainer).toContain('No gap is published for Aldermark');
+    expect(explainer).not.toMatch(/trend|They show/);
   });
 
   test('money that fell', () => {
@@ -164,7 +170,7 @@ describe('the words of what a demo month may not bring', () => {
   });
 
   test('a gap without persistence', () => {
-    const words = releaseWords({ ...last, result, persistence: 'none' });
+    const words = releaseWords({ ...last, result, assumptions: {} });
     expect(words.explainer).toContain('The same-month output effect of the surprise is');
   });
 });
