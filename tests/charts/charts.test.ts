@@ -121,6 +121,7 @@ describe('gauge', () => {
   it.each([
     [184, 0.84, 38],
     [168, 12.34, 32],
+    [168, 0, 38],
     [130, 0.84, 26],
     [52, 0.84, null],
   ])('at %i px prints %d at a size that fits, or leaves it to the page', (width, value, size) => {
@@ -128,7 +129,7 @@ describe('gauge', () => {
     const { svg } = gauge({
       ...drawing,
       width,
-      scale: { unit: 'pp', domain: 15 },
+      scale: { unit: 'pp', domain: value + 1 },
       data: { ...gaugeData, history },
     });
     const found = /font-size="(\d+)" font-weight="300"/.exec(svg)?.[1];

@@ -89,7 +89,8 @@ export function gauge(options: GaugeOptions): Chart {
   const reading = read(data.history, scale);
   const colour = reading.side === 'level' ? palette.ink : palette[reading.side];
   const text = reading.value === null ? '' : figure(reading.value, options);
-  const size = figureSize(text, width - left);
+  // By the scale's end, so that all figures of a row have one size.
+  const size = figureSize(figure(scale.domain, options), width - left);
   const labels: Label[] = labelled ? tickLabels(options, scale, left - scaleLeft - 4, y) : [];
   const svg = drawSvg({
     chart: options,
