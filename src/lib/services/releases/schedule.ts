@@ -2,6 +2,7 @@ import { z } from 'zod';
 import type { Release } from '../../../../db/tables.ts';
 import { bringUpToDate } from '../../publication/moments.ts';
 import { record } from '../audit.ts';
+import { announceIn } from '../calendar/announce.ts';
 import { type InTransaction, type ServiceContext, ServiceError } from '../context.ts';
 import { parseInput } from '../parseInput.ts';
 import { requirePermission } from '../people/permissions.ts';
@@ -42,7 +43,16 @@ export async function scheduleRelease(
     }
     if (ahead > MOST_AHEAD_MS) throw fault('at', 'Enter a time within the next two years.');
     await refuseBeforeEarlier(trx, release, at);
-    const announced = await announce(trx, release, at, reason, actor.id);
+    // A correction is not announced: that would betray it.
+    const announced =
+      release.revision === 1 &&
+      (await announceIn(trx, {
+        economy: release.economy_code,
+        period: release.period,
+        dueAt: at,
+        reason,
+        by: actor.id,
+      }));
     await trx.db
       .updateTable('release')
       .set({
@@ -74,45 +84,6 @@ async function refuseBeforeEarlier(ctx: InTransaction, release: Release, at: Dat
     .where('scheduled_for', '>=', at)
     .executeTakeFirst();
   if (earlier) throw fault('at', `Enter a time after that of ${earlier.id}.`);
-}
-
-/**
- * Announces the time of a first revision where it is new or changed; a correction is not announced, as that would
- * betray it. Answers whether it did.
- */
-async function announce(
-  ctx: InTransaction,
-  release: Release,
-  at: Date,
-  reason: string,
-  by: string,
-): Promise<boolean> {
-  if (release.revision > 1) return false;
-  const last = await ctx.db
-    .selectFrom('announcement')
-    .select('due_at')
-    .where('economy_code', '=', release.economy_code)
-    .where('period', '=', release.period)
-    .orderBy('announced_at', 'desc')
-    .limit(1)
-    .executeTakeFirst();
-  if (last?.due_at.getTime() === at.getTime()) return false;
-  if (last && !reason) {
-    const was = last.due_at.toISOString().slice(0, 19).replace('T', ' ');
-    throw fault('reason', `Say why the announced time, ${was} UTC, changes: readers see it.`);
-  }
-  await ctx.db
-    .insertInto('announcement')
-    .values({
-      economy_code: release.economy_code,
-      period: release.period,
-      announced_at: ctx.now(),
-      due_at: at,
-      reason: last ? reason : '',
-      announced_by: by,
-    })
-    .execute();
-  return true;
 }
 
 function fault(field: string, message: string): ServiceError {
