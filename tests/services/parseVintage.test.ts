@@ -148,12 +148,12 @@ describe('parseVintage', () => {
   test('lists the first hundred faults and counts the rest', () => {
     const rows = Array.from({ length: 150 }, (_, i) => `${1900 + i}-01,x`);
     const refused = () => monthly(['period,money', ...rows].join('\n'));
-    expect(refused).toThrowError(/299 faults.*The first 100 are listed/s);
+    expect(refused).toThrow(/299 faults.*The first 100 are listed/s);
     expect(faultsOf(['period,money', ...rows].join('\n'))).toHaveLength(FAULTS_TOLD);
   });
 
   test('refuses a file of 40 MB by its size', () => {
-    expect(() => monthly(new Uint8Array(40 * 1024 * 1024))).toThrowError(
+    expect(() => monthly(new Uint8Array(40 * 1024 * 1024))).toThrow(
       /has 40.0 MB and at most 5 MB are read/,
     );
   });
