@@ -2,7 +2,10 @@ import { sql } from 'kysely';
 import { migrate } from '../db/migrate.ts';
 import type { Runtime } from '../src/lib/runtime.ts';
 import { writeAccounts } from './accounts.ts';
-import { seedDemo } from './seed.ts';
+import { type SeedOptions, seedDemo } from './seed.ts';
+
+/** Less than the whole demo: fewer economies or months. */
+export type SeedSize = Pick<SeedOptions, 'economies' | 'months' | 'full'>;
 
 const LOCK = 7_305_002;
 
@@ -14,6 +17,7 @@ const LOCK = 7_305_002;
 export async function seedWhereEmpty(
   runtime: Runtime,
   onProgress: (text: string) => void,
+  size: SeedSize = {},
 ): Promise<void> {
   const { db, clock, env } = runtime;
   await db.connection().execute(async (connection) => {
@@ -30,7 +34,7 @@ export async function seedWhereEmpty(
       const anyone = await db.selectFrom('person').select('id').limit(1).executeTakeFirst();
       if (anyone) return;
       await db.insertInto('demo_seed').values({ started_at: clock.now() }).execute();
-      const accounts = await seedDemo(runtime, { now: clock.now(), onProgress });
+      const accounts = await seedDemo(runtime, { ...size, now: clock.now(), onProgress });
       await writeAccounts(env.dataDir, accounts);
       await db.updateTable('demo_seed').set({ finished_at: clock.now() }).execute();
     } finally {

@@ -2,6 +2,7 @@ import { fork } from 'node:child_process';
 import { once } from 'node:events';
 import { createServer } from 'node:net';
 import { fileURLToPath } from 'node:url';
+import type { SeedSize } from '../../seed/first.ts';
 import { readEnv } from '../../src/lib/env.ts';
 
 export interface TestServer {
@@ -21,6 +22,8 @@ export interface ServerOptions {
   port?: number;
   /** More of the environment, such as SLACKWATER_MODE; what is given here wins. */
   env?: Record<string, string>;
+  /** How much of the demo an empty database gets; all of it takes long. */
+  seed?: SeedSize;
 }
 
 const PROCESS = fileURLToPath(new URL('serverProcess.mjs', import.meta.url));
@@ -40,7 +43,7 @@ export async function startServer(options: ServerOptions): Promise<TestServer> {
   child.stdout?.on('data', (chunk: Buffer) => (spoken += chunk.toString()));
   child.stderr?.on('data', (chunk: Buffer) => (spoken += chunk.toString()));
   const gone = once(child, 'exit');
-  child.send({ env });
+  child.send({ env, seed: options.seed });
 
   const ready = once(child, 'message', { signal: AbortSignal.timeout(READY_MS) });
   const first = await Promise.race([ready, gone.then(() => null)]).catch(() => null);

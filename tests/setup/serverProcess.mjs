@@ -3,10 +3,10 @@ import { ENTRY } from '../../src/commands/build.mjs';
 
 process.on('disconnect', () => process.exit(1));
 
-process.once('message', async ({ env }) => {
+process.once('message', async ({ env, seed }) => {
   try {
     const { serve } = await import(ENTRY);
-    const served = await serve({ env, onProgress: (text) => console.log(text) });
+    const served = await serve({ env, seed, onProgress: (text) => console.log(text) });
     process.once('SIGTERM', () => served.close().then(() => process.exit(0)));
     process.send({ url: served.url });
   } catch (error) {

@@ -3,7 +3,7 @@ import { createServer } from 'node:http';
 import { availableParallelism } from 'node:os';
 import { dirname, join } from 'node:path';
 import { setTimeout as sleep } from 'node:timers/promises';
-import { seedWhereEmpty } from '../../../seed/first.ts';
+import { type SeedSize, seedWhereEmpty } from '../../../seed/first.ts';
 import type { Env } from '../env.ts';
 import { bringUpToDate, isBehind, redraw } from '../publication/moments.ts';
 import { startPool } from '../publication/pool.ts';
@@ -17,6 +17,8 @@ export interface ServeOptions {
   env: Env;
   /** Told in words what takes time. */
   onProgress(text: string): void;
+  /** How much of the demo is seeded, for tests. */
+  seed?: SeedSize;
 }
 
 export interface Served {
@@ -32,7 +34,7 @@ const SYSTEM = { id: null, role: 'system', name: 'Slackwater' } as const;
 export async function serveSite(
   app: NodeApp,
   entry: string,
-  { env, onProgress }: ServeOptions,
+  { env, onProgress, seed }: ServeOptions,
 ): Promise<Served> {
   const dist = dirname(dirname(entry));
   const root = dirname(dist);
@@ -45,7 +47,7 @@ export async function serveSite(
   const { log } = runtime;
   const ctx = contextFor(runtime, SYSTEM);
 
-  if (env.mode === 'demo') await seedWhereEmpty(runtime, onProgress);
+  if (env.mode === 'demo') await seedWhereEmpty(runtime, onProgress, seed);
   const drawn = await redraw(ctx, (done, all) => {
     if (done === all || done % 25 === 0)
       onProgress(`Drawing pages for this build, ${done} of ${all}`);
