@@ -1,14 +1,9 @@
 import { defineMiddleware } from 'astro:middleware';
 import { actorOf } from './lib/auth.ts';
-import { contextFor } from './lib/runtime.ts';
-import { recordView } from './lib/services/releases/view.ts';
 
 /** Pages for people who are signed in; everything else is the same for every reader. */
 const PERSONAL = /^\/(desk|account|admin)(\/|$)/;
 const ASKS_WHO = /^\/(desk|account|admin|sign-in|sign-up|sign-out)(\/|$)/;
-
-/** The page of a release as it would be published, for those who may see it before. */
-const PREVIEW = /^\/desk\/releases\/(([A-Z]{3})-(.+)-(r\d+))\/preview\/$/;
 
 const POLICY = [
   "default-src 'self'",
@@ -32,13 +27,6 @@ export const onRequest = defineMiddleware(async (context, next) => {
   if (PERSONAL.test(url.pathname) && !locals.actor) {
     const back = encodeURIComponent(url.pathname + url.search);
     return context.redirect(`/sign-in/?next=${back}`, 303);
-  }
-  const preview = PREVIEW.exec(url.pathname);
-  if (preview && locals.actor) {
-    const [, id, code, period, revision] = preview;
-    await recordView(contextFor(locals.runtime, locals.actor), { id: id!, place: 'preview' });
-    locals.view = { at: locals.view.at, include: id! };
-    return guarded(await next(`/releases/${code}/${period}/${revision}/`), true);
   }
   return guarded(await next(), ASKS_WHO.test(url.pathname));
 });
