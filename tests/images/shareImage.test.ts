@@ -1,4 +1,4 @@
-import { describe, expect, it } from 'vitest';
+import { beforeAll, describe, expect, it } from 'vitest';
 import { overlap } from '../../src/lib/charts/labels.ts';
 import { darkPalette, lightPalette } from '../../src/lib/charts/palette.ts';
 import { textWidth } from '../../src/lib/charts/textWidth.ts';
@@ -6,6 +6,7 @@ import { loadFonts } from '../../src/lib/images/fonts.ts';
 import { shareImage, wideSvg } from '../../src/lib/images/shareImage.ts';
 import type { ShareImageInput } from '../../src/lib/images/shareImage.ts';
 import { measure } from '../../src/lib/images/typesetting.ts';
+import type { TextBlock } from '../../src/lib/images/typesetting.ts';
 import { chartZone, datumAt } from '../../src/lib/images/wideLayout.ts';
 import { growthWords, shortCaution } from '../../src/lib/images/words.ts';
 import { sampleResult } from '../charts/sample.ts';
@@ -61,8 +62,14 @@ const cases: Record<string, ShareImageInput> = {
 };
 
 describe.each(Object.entries(cases))('the wide image, %s', (_, given) => {
-  it('keeps text, figure and chart apart and inside its margins', async () => {
-    const { svg, blocks } = await wideSvg(given, fonts);
+  let svg: string;
+  let blocks: TextBlock[];
+
+  beforeAll(async () => {
+    ({ svg, blocks } = await wideSvg(given, fonts));
+  });
+
+  it('keeps text, figure and chart apart and inside its margins', () => {
     const boxes = textBoxes(svg);
     expect(boxes).toHaveLength(blocks.length);
     const named = blocks.map(({ name }, i) => ({ name, box: boxes[i]! }));
@@ -87,8 +94,7 @@ describe.each(Object.entries(cases))('the wide image, %s', (_, given) => {
     }
   });
 
-  it('stands its figure on the datum or hangs it there, with the label on the other side', async () => {
-    const { svg, blocks } = await wideSvg(given, fonts);
+  it('stands its figure on the datum or hangs it there, with the label on the other side', () => {
     const boxes = textBoxes(svg);
     const figure = boxes[blocks.findIndex(({ name }) => name === 'figure')]!;
     const label = boxes[blocks.findIndex(({ name }) => name === 'explanation 1')]!;
@@ -107,8 +113,7 @@ describe.each(Object.entries(cases))('the wide image, %s', (_, given) => {
     }
   });
 
-  it('sets all words as paths, none smaller than 19 px', async () => {
-    const { svg, blocks } = await wideSvg(given, fonts);
+  it('sets all words as paths, none smaller than 19 px', () => {
     expect(svg).not.toMatch(/<text|<image|<style|font-family|style=|NaN|undefined/);
     for (const { size, name } of blocks) expect(size, name).toBeGreaterThanOrEqual(19);
     expect(blocks.map(({ text }) => text)).toContain(caution);
