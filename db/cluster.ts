@@ -13,7 +13,7 @@ import {
   writeFile,
 } from 'node:fs/promises';
 import { createServer } from 'node:net';
-import { join, resolve } from 'node:path';
+import { dirname, join, resolve } from 'node:path';
 import { setTimeout as sleep } from 'node:timers/promises';
 import pg from 'pg';
 
@@ -50,6 +50,7 @@ interface Place {
   home: string;
   data: string;
   log: string;
+  lock: string;
   owner: { uid: number; gid: number } | null;
 }
 
@@ -67,9 +68,9 @@ export async function startCluster(
       `PostgreSQL ${VERSION} is not installed: install Debian's package postgresql-${VERSION}, or set DATABASE_URL.`,
     );
   }
-  await makeHome(place, options);
-  const unlock = await lock(join(place.home, 'lock'), dataDir);
+  const unlock = await lock(place);
   try {
+    await makeHome(place, options);
     await initialise(place, options);
     await checkVersion(place);
     const port = (await runningPort(place)) ?? (await launch(place, options));
@@ -95,12 +96,12 @@ export async function removeCluster(dataDir: string): Promise<void> {
   const place = await findPlace(dataDir);
   await shutDown(place);
   await rm(place.home, { recursive: true, force: true });
+  await rm(place.lock, { force: true });
 }
 
 /** Whether a live process has the cluster of this data directory. */
 export async function isClusterInUse(dataDir: string): Promise<boolean> {
-  const { home } = await findPlace(dataDir);
-  return (await holder(join(home, 'lock'))) !== null;
+  return (await holder((await findPlace(dataDir)).lock)) !== null;
 }
 
 async function findPlace(given: string): Promise<Place> {
@@ -109,7 +110,7 @@ async function findPlace(given: string): Promise<Place> {
   const hash = createHash('sha256').update(dataDir).digest('hex').slice(0, 16);
   const home = owner ? join(ROOT_CLUSTERS, hash) : join(dataDir, 'database');
   const data = join(home, 'data');
-  return { dataDir, home, data, log: join(data, 'server.log'), owner };
+  return { dataDir, home, data, log: join(data, 'server.log'), lock: `${home}.lock`, owner };
 }
 
 /** The account of Debian's PostgreSQL, else nobody: the server refuses to run as root. */
@@ -126,28 +127,16 @@ async function unprivileged(): Promise<{ uid: number; gid: number }> {
 
 async function makeHome(place: Place, options: ClusterOptions): Promise<void> {
   const pointer = join(place.dataDir, 'database-location');
-  try {
-    await mkdir(place.dataDir, { recursive: true, mode: 0o700 });
-    if (place.owner && existsSync(place.data) && !existsSync(pointer)) {
-      // Its data directory was removed by hand. A database is never deleted for that.
-      if (await holder(join(place.home, 'lock'))) throw inUse(place.dataDir);
-      await shutDown(place);
-      const aside = `${place.home}-${new Date().toISOString().replace(/\D/g, '').slice(0, 14)}`;
-      await rename(place.home, aside);
-      options.onProgress?.(
-        `The database of an earlier, removed data directory is kept in ${aside}`,
-      );
-    }
-    await mkdir(place.home, { recursive: true });
-    await chmod(place.home, place.owner ? 0o711 : 0o700);
-    await writeFile(pointer, `${place.data}\n`);
-  } catch (error) {
-    if (error instanceof ClusterError) throw error;
-    throw new ClusterError(
-      `The data directory ${place.dataDir} cannot be written (${reason(error)}): set SLACKWATER_DATA_DIR to a directory that can.`,
-      { cause: error },
-    );
+  if (place.owner && existsSync(place.data) && !existsSync(pointer)) {
+    // Its data directory was removed by hand. A database is never deleted for that.
+    await shutDown(place);
+    const aside = `${place.home}-${new Date().toISOString().replace(/\D/g, '').slice(0, 14)}`;
+    await rename(place.home, aside);
+    options.onProgress?.(`The database of an earlier, removed data directory is kept in ${aside}`);
   }
+  await mkdir(place.home, { recursive: true });
+  await chmod(place.home, place.owner ? 0o711 : 0o700);
+  await writeFile(pointer, `${place.data}\n`);
 }
 
 /** The process that holds a lock, null when there is none or it has died. */
@@ -169,10 +158,19 @@ const inUse = (dataDir: string): ClusterError =>
     `Another Slackwater is running on the data directory ${dataDir}: stop it first, or set SLACKWATER_DATA_DIR to another directory.`,
   );
 
-/** Takes the lock file or throws; answers how to release it. */
-async function lock(path: string, dataDir: string): Promise<() => Promise<void>> {
+/** Makes the directories and takes the lock file, or throws; answers how to release it. */
+async function lock({ dataDir, lock: path }: Place): Promise<() => Promise<void>> {
   const own = `${path}.${process.pid}.${randomBytes(4).toString('hex')}`;
-  await writeFile(own, `${process.pid} ${await startOf(process.pid)}`);
+  try {
+    await mkdir(dataDir, { recursive: true, mode: 0o700 });
+    await mkdir(dirname(path), { recursive: true });
+    await writeFile(own, `${process.pid} ${await startOf(process.pid)}`);
+  } catch (error) {
+    throw new ClusterError(
+      `The data directory ${dataDir} cannot be written (${reason(error)}): set SLACKWATER_DATA_DIR to a directory that can.`,
+      { cause: error },
+    );
+  }
   try {
     for (let attempt = 1; ; attempt += 1) {
       // link, unlike a write, makes the file with its content in one step and fails where one is.

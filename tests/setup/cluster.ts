@@ -1,8 +1,12 @@
-import { mkdtemp, readdir, rm } from 'node:fs/promises';
+import { spawn } from 'node:child_process';
+import { mkdtempSync } from 'node:fs';
+import { readdir, stat } from 'node:fs/promises';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
+import { fileURLToPath } from 'node:url';
 import type { TestProject } from 'vitest/node';
-import { isClusterInUse, removeCluster, startCluster } from '../../db/cluster.ts';
+import { isClusterInUse, startCluster } from '../../db/cluster.ts';
+import { discard } from './discard.ts';
 
 declare module 'vitest' {
   export interface ProvidedContext {
@@ -35,44 +39,50 @@ export default async function setup(project: TestProject): Promise<() => Promise
 }
 
 function start(): RunningCluster {
-  const dataDir = mkdtemp(join(tmpdir(), PREFIX));
-  const started = sweep()
-    .then(() => dataDir)
-    .then((directory) =>
-      startCluster(directory, {
-        settings: {
-          // Nothing of a test outlives the run.
-          fsync: 'off',
-          full_page_writes: 'off',
-          synchronous_commit: 'off',
-          max_connections: '300',
-        },
-      }),
-    );
+  const dataDir = mkdtempSync(join(tmpdir(), PREFIX));
+  const started = sweep().then(() =>
+    startCluster(dataDir, {
+      settings: {
+        // Nothing of a test outlives the run.
+        fsync: 'off',
+        full_page_writes: 'off',
+        synchronous_commit: 'off',
+        max_connections: '300',
+      },
+    }),
+  );
+  let removed = false;
+  process.once('exit', () => {
+    if (!removed) discardLater(dataDir);
+  });
   return {
     url: started.then((cluster) => cluster.url),
     users: 0,
     remove: async () => {
       await (await started).stop();
-      await discard(await dataDir);
+      await discard(dataDir);
+      removed = true;
     },
   };
 }
 
-async function discard(dataDir: string): Promise<void> {
-  await removeCluster(dataDir);
-  await rm(dataDir, { recursive: true, force: true });
+/** Vitest ends at a signal without any teardown: another process does it then. */
+function discardLater(dataDir: string): void {
+  const program = fileURLToPath(new URL('discard.ts', import.meta.url));
+  spawn(process.execPath, ['--import', 'tsx', program, dataDir], {
+    detached: true,
+    stdio: 'ignore',
+  }).unref();
 }
 
-/** Removes what a killed run left; its cluster would run on for ever. */
+/** Removes what a killed run left half an hour ago or earlier; its cluster would run on for ever. */
 async function sweep(): Promise<void> {
   for (const name of await readdir(tmpdir())) {
-    const dataDir = join(tmpdir(), name);
     if (!name.startsWith(PREFIX)) continue;
-    const located = await readdir(dataDir).catch((): string[] => []);
-    // Without its pointer a run beside us has only just made the directory.
-    if (located.includes('database-location') && !(await isClusterInUse(dataDir))) {
-      await discard(dataDir);
-    }
+    const dataDir = join(tmpdir(), name);
+    const made = (await stat(dataDir).catch(() => null))?.mtimeMs ?? Date.now();
+    // Runs beside ours are let alone, also in the moments when they hold no lock.
+    if (Date.now() - made < 30 * 60_000 || (await isClusterInUse(dataDir))) continue;
+    await discard(dataDir);
   }
 }

@@ -1,6 +1,7 @@
 import { type ChildProcess, spawn } from 'node:child_process';
 import { once } from 'node:events';
-import { mkdtemp, readdir, readFile, rm, stat, writeFile } from 'node:fs/promises';
+import { existsSync } from 'node:fs';
+import { mkdtemp, readFile, rm, stat, writeFile } from 'node:fs/promises';
 import { tmpdir } from 'node:os';
 import { dirname, join } from 'node:path';
 import { pathToFileURL } from 'node:url';
@@ -12,7 +13,7 @@ const settings = { fsync: 'off' };
 
 let dataDir: string;
 beforeAll(async () => {
-  dataDir = await mkdtemp(join(tmpdir(), 'slackwater-cluster-'));
+  dataDir = await mkdtemp(join(tmpdir(), 'slackwater-test-cluster-'));
 });
 afterAll(async () => {
   await removeCluster(dataDir);
@@ -87,7 +88,7 @@ describe('the private cluster', () => {
     );
     await cluster.stop();
     expect(await isClusterInUse(dataDir)).toBe(false);
-    expect(await readdir(await home())).not.toContain('lock');
+    expect(existsSync(`${await home()}.lock`)).toBe(false);
   });
 
   test('is adopted where only its process was killed', async () => {
@@ -108,11 +109,26 @@ describe('the private cluster', () => {
     await kill(child);
     process.kill(Number(pid), 'SIGKILL');
     await writeFile(pidFile, [process.pid, ...rest].join('\n'));
-    await writeFile(join(await home(), 'lock'), `${process.pid} 1`);
+    await writeFile(`${await home()}.lock`, `${process.pid} 1`);
     const cluster = await startCluster(dataDir, { settings });
     expect(await query(cluster.url, 'select value from kept')).toEqual([{ value: 7 }]);
     expect(cluster.url).toBe(url);
     await cluster.stop();
+  });
+
+  test('is put aside, not deleted, where its data directory was removed by hand', async () => {
+    if (process.getuid?.() !== 0) return; // Elsewhere the cluster is in the data directory itself.
+    await rm(join(dataDir, 'database-location'));
+    const told: string[] = [];
+    const cluster = await startCluster(dataDir, {
+      settings,
+      onProgress: (text) => told.push(text),
+    });
+    await expect(query(cluster.url, 'select value from kept')).rejects.toThrow('does not exist');
+    await cluster.stop();
+    const aside = /is kept in (\S+)/.exec(told[0]!)![1]!;
+    expect(existsSync(join(aside, 'data', 'PG_VERSION'))).toBe(true);
+    await rm(aside, { recursive: true });
   });
 
   test('is refused where another version of PostgreSQL made it', async () => {
