@@ -53,7 +53,8 @@ CREATE TABLE public.api_key (
     created_at timestamp with time zone NOT NULL,
     updated_at timestamp with time zone NOT NULL,
     permissions text,
-    metadata text
+    metadata text,
+    plan text DEFAULT 'open'::text NOT NULL
 );
 
 CREATE TABLE public.artefact (
@@ -109,6 +110,15 @@ CREATE TABLE public.economy (
     CONSTRAINT economy_name_in_text_check CHECK ((name_in_text <> ''::text))
 );
 
+CREATE TABLE public.key_usage (
+    key_id text NOT NULL,
+    span text NOT NULL,
+    starts_at timestamp with time zone NOT NULL,
+    calls integer NOT NULL,
+    CONSTRAINT key_usage_calls_check CHECK ((calls >= 0)),
+    CONSTRAINT key_usage_span_check CHECK ((span = ANY (ARRAY['minute'::text, 'month'::text])))
+);
+
 CREATE TABLE public.kysely_migration (
     name character varying(255) NOT NULL,
     "timestamp" character varying(255) NOT NULL
@@ -140,6 +150,15 @@ CREATE TABLE public.person (
     CONSTRAINT person_email_check CHECK ((email = lower(email))),
     CONSTRAINT person_name_check CHECK ((name <> ''::text)),
     CONSTRAINT person_role_check CHECK ((role = ANY (ARRAY['subscriber'::text, 'editor'::text, 'reviewer'::text, 'administrator'::text])))
+);
+
+CREATE TABLE public.plan (
+    name text NOT NULL,
+    per_minute integer NOT NULL,
+    per_month integer NOT NULL,
+    CONSTRAINT plan_name_check CHECK ((name <> ''::text)),
+    CONSTRAINT plan_per_minute_check CHECK ((per_minute > 0)),
+    CONSTRAINT plan_per_month_check CHECK ((per_month > 0))
 );
 
 CREATE TABLE public.publication (
@@ -335,6 +354,9 @@ ALTER TABLE ONLY public.demo_seed
 ALTER TABLE ONLY public.economy
     ADD CONSTRAINT economy_pkey PRIMARY KEY (code);
 
+ALTER TABLE ONLY public.key_usage
+    ADD CONSTRAINT key_usage_pkey PRIMARY KEY (key_id, span, starts_at);
+
 ALTER TABLE ONLY public.kysely_migration_lock
     ADD CONSTRAINT kysely_migration_lock_pkey PRIMARY KEY (id);
 
@@ -349,6 +371,9 @@ ALTER TABLE ONLY public.person
 
 ALTER TABLE ONLY public.person
     ADD CONSTRAINT person_pkey PRIMARY KEY (id);
+
+ALTER TABLE ONLY public.plan
+    ADD CONSTRAINT plan_pkey PRIMARY KEY (name);
 
 ALTER TABLE ONLY public.publication
     ADD CONSTRAINT publication_pkey PRIMARY KEY (singleton);
@@ -406,6 +431,8 @@ CREATE INDEX api_key_by_person ON public.api_key USING btree (person_id);
 
 CREATE INDEX audit_by_subject ON public.audit USING btree (subject, id);
 
+CREATE INDEX key_usage_by_time ON public.key_usage USING btree (span, starts_at);
+
 CREATE INDEX published_by_generation ON public.published USING btree (generation);
 
 CREATE INDEX published_by_time ON public.published USING btree (visible_from);
@@ -436,11 +463,17 @@ ALTER TABLE ONLY public.announcement
 ALTER TABLE ONLY public.api_key
     ADD CONSTRAINT api_key_person_id_fkey FOREIGN KEY (person_id) REFERENCES public.person(id) ON DELETE CASCADE;
 
+ALTER TABLE ONLY public.api_key
+    ADD CONSTRAINT api_key_plan_fkey FOREIGN KEY (plan) REFERENCES public.plan(name);
+
 ALTER TABLE ONLY public.audit
     ADD CONSTRAINT audit_person_id_fkey FOREIGN KEY (person_id) REFERENCES public.person(id);
 
 ALTER TABLE ONLY public.economy
     ADD CONSTRAINT economy_created_by_fkey FOREIGN KEY (created_by) REFERENCES public.person(id);
+
+ALTER TABLE ONLY public.key_usage
+    ADD CONSTRAINT key_usage_key_id_fkey FOREIGN KEY (key_id) REFERENCES public.api_key(id) ON DELETE CASCADE;
 
 ALTER TABLE ONLY public.published
     ADD CONSTRAINT published_artefact_hash_fkey FOREIGN KEY (artefact_hash) REFERENCES public.artefact(hash);
