@@ -2,6 +2,8 @@ import { steppedClock } from '../src/lib/clock.ts';
 import { addPeriods } from '../src/lib/econ/periods.ts';
 import { type Runtime, contextFor } from '../src/lib/runtime.ts';
 import type { Actor, ServiceContext } from '../src/lib/services/context.ts';
+import { createKey } from '../src/lib/services/keys/create.ts';
+import { SCOPES } from '../src/lib/services/keys/scopes.ts';
 import type { DemoAccounts } from './accounts.ts';
 import { newestMonth, releaseTimes } from './calendar.ts';
 import { type DemoEconomy, demoEconomies } from './economies.ts';
@@ -63,7 +65,8 @@ export async function seedDemo(runtime: Runtime, options: SeedOptions): Promise<
   );
   await play(steps, clock, options.onProgress);
   clock.set(options.now);
-  return { accounts, api_key: '' };
+  const key = await createKey(as(cast.subscriber), { name: 'Demo', scopes: [...SCOPES] });
+  return { accounts, api_key: key.plain };
 }
 
 async function play(

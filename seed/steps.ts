@@ -1,6 +1,7 @@
 import { periodLabel } from '../src/lib/charts/figures.ts';
 import { addPeriods, periodDifference } from '../src/lib/econ/periods.ts';
 import type { ComputeResult } from '../src/lib/econ/types.ts';
+import { announce } from '../src/lib/services/calendar/announce.ts';
 import type { ServiceContext } from '../src/lib/services/context.ts';
 import { createEconomy } from '../src/lib/services/economies/create.ts';
 import type { SignedIn } from '../src/lib/services/people/permissions.ts';
@@ -42,6 +43,7 @@ export interface Assignment {
 }
 
 const HOUR = 3_600_000;
+const ANNOUNCED_AHEAD = 45 * 24 * HOUR;
 const CONTACT = 'Slackwater desk, desk@example.org';
 const LICENCE = 'CC BY 4.0';
 
@@ -50,6 +52,7 @@ export function economySteps(assignment: Assignment): Step[] {
   const specification = { id: '' };
   const steps = [
     ...foundingSteps(assignment, specification),
+    ...announcementSteps(assignment),
     ...assignment.months.flatMap((period) => releaseSteps(assignment, specification, period)),
   ];
   return steps.filter((step) => step.at <= assignment.now);
@@ -91,6 +94,18 @@ function foundingSteps(assignment: Assignment, specification: { id: string }): S
       work: () => approveSpecification(as(reviewer), specification.id),
     },
   ];
+}
+
+/** Every month's date, and that of the month after the newest, stands in the calendar weeks before. */
+function announcementSteps({ economy, reviewer, as, now, start, months }: Assignment): Step[] {
+  return [...months, addPeriods(months.at(-1)!, 1)].map((period) => {
+    const { due } = releaseTimes(now, economy.slot, period);
+    const earliest = start.getTime() + 4 * HOUR;
+    return {
+      at: new Date(Math.max(earliest, due.getTime() - ANNOUNCED_AHEAD)),
+      work: () => announce(as(reviewer), { economy: economy.code, period, dueAt: due }),
+    };
+  });
 }
 
 function described(series: DemoSeries) {

@@ -2,6 +2,8 @@ import { afterAll, beforeAll, describe, expect, test } from 'vitest';
 import type { DemoAccounts } from '../../seed/accounts.ts';
 import { seedDemo } from '../../seed/seed.ts';
 import { verifyAudit } from '../../src/lib/services/audit.ts';
+import { upcoming } from '../../src/lib/services/calendar/upcoming.ts';
+import { keyVerifier } from '../../src/lib/services/keys/verify.ts';
 import { listReleases } from '../../src/lib/services/releases/public.ts';
 import { type Stage, seedStage } from './stage.ts';
 
@@ -56,6 +58,28 @@ describe('the seeded demo', () => {
     const second = NOW.getTime() + 15 * MINUTE;
     expect(await idsAt(new Date(second - 1000))).not.toContain('XES-2031-08-r1');
     expect(await idsAt(new Date(second))).toContain('XES-2031-08-r1');
+  });
+
+  test('has announced what is to come, the next month of every economy included', async () => {
+    const coming = await upcoming(stage.runtime.db, { at: NOW });
+    expect(coming.map(({ economyCode, period }) => `${economyCode} ${period}`)).toEqual([
+      'XES 2031-08',
+      'XDU 2031-08',
+      'XAL 2031-09',
+      'XBR 2031-09',
+      'XCL 2031-09',
+      'XES 2031-09',
+      'XDU 2031-09',
+    ]);
+    expect(coming.every(({ announcedAt, reason }) => announcedAt < NOW && reason === '')).toBe(
+      true,
+    );
+  });
+
+  test('has a key to the API for its subscriber', async () => {
+    const key = await keyVerifier(stage.runtime.db)(accounts.api_key, NOW);
+    expect(key?.scopes).toEqual(['read', 'scenarios']);
+    expect(key?.plan.name).toBe('open');
   });
 
   test('lets out no vintage before its release', async () => {
