@@ -1,4 +1,5 @@
 import { afterAll, beforeAll, describe, expect, test } from 'vitest';
+import { lockPublication } from '../../db/queries/publicationLock.ts';
 import { approveRelease } from '../../src/lib/services/releases/approve.ts';
 import { chooseInputs } from '../../src/lib/services/releases/chooseInputs.ts';
 import { computeRelease } from '../../src/lib/services/releases/compute.ts';
@@ -266,6 +267,22 @@ describe('the schedule', () => {
       { due_at: at, reason: '' },
       { due_at: later, reason: 'The source restates.' },
     ]);
+  });
+
+  test('is left only when nobody is drawing its moment', async () => {
+    const id = await desk.scheduled('DAD', ahead(600));
+    let isDone = false;
+    let leaving: Promise<void> | undefined;
+    await desk.db.transaction().execute(async (trx) => {
+      await lockPublication(trx);
+      leaving = unscheduleRelease(desk.as('reviewer'), { id, reason: 'Wait.' }).then(() => {
+        isDone = true;
+      });
+      await new Promise((resolve) => setTimeout(resolve, 300));
+      expect(isDone).toBe(false);
+    });
+    await leaving;
+    expect((await desk.release(id)).state).toBe('approved');
   });
 
   test('is left with a reason, not once the release is about to be public', async () => {

@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { lockPublication } from '../../../../db/queries/publicationLock.ts';
 import { bringUpToDate, takeOut } from '../../publication/moments.ts';
 import { record } from '../audit.ts';
 import { type ServiceContext, ServiceError } from '../context.ts';
@@ -22,6 +23,8 @@ export async function unscheduleRelease(
   const actor = requirePermission(ctx.actor, 'releases.unschedule');
   const { id, reason } = parseInput(fields, input);
   await transact(ctx, async (trx) => {
+    // Whoever is drawing this moment would else put it in force after it was taken out.
+    await lockPublication(trx.db);
     const release = await lockedRelease(trx, id);
     requireStep(trx, release, 'unschedule');
     await requireSecondPair(trx, id, actor);
