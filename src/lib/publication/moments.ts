@@ -1,5 +1,6 @@
 import { type Transaction, sql } from 'kysely';
 import type { Db } from '../../../db/connection.ts';
+import { PUBLICATION_LOCK } from '../../../db/queries/publicationLock.ts';
 import { currentHashes, nextGeneration } from '../../../db/queries/published.ts';
 import type { Database } from '../../../db/tables.ts';
 import type { InTransaction, ServiceContext } from '../services/context.ts';
@@ -10,8 +11,6 @@ import { type PlacedFile, filesOf } from './files.ts';
 
 /** How long after drawing an immediate change counts, so that every process has it before it does. */
 const IMMEDIATE_MS = 3_000;
-/** One publication at a time in the whole system. */
-const LOCK = 7_305_001;
 
 interface Coming extends Planned {
   id: string;
@@ -142,11 +141,11 @@ export async function redraw(
 
 async function exclusively<T>(db: Db, work: () => Promise<T>): Promise<T> {
   return db.connection().execute(async (connection) => {
-    await sql`select pg_advisory_lock(${LOCK})`.execute(connection);
+    await sql`select pg_advisory_lock(${PUBLICATION_LOCK})`.execute(connection);
     try {
       return await work();
     } finally {
-      await sql`select pg_advisory_unlock(${LOCK})`.execute(connection);
+      await sql`select pg_advisory_unlock(${PUBLICATION_LOCK})`.execute(connection);
     }
   });
 }
