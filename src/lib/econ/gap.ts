@@ -1,5 +1,5 @@
 import ln from '@stdlib/math-base-special-ln';
-import { normalQuantile } from './distributions.ts';
+import { normalQuantile } from './distributions/normal.ts';
 import type { ExpectationPath } from './expectations/expectation.ts';
 import type { Values } from './types.ts';
 

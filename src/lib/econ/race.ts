@@ -1,4 +1,4 @@
-import { studentTwoSided } from './distributions.ts';
+import { studentTwoSided } from './distributions/studentT.ts';
 import { coefficientsOf } from './expectations/coefficients.ts';
 import { expect } from './expectations/expect.ts';
 import type { ExpectationPath } from './expectations/expectation.ts';

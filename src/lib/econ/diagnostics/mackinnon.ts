@@ -1,4 +1,4 @@
-import { normalCdf } from '../distributions.ts';
+import { normalCdf } from '../distributions/normal.ts';
 
 /** Which deterministic terms a Dickey–Fuller regression has. */
 export type Deterministic = 'constant' | 'constant_and_trend';

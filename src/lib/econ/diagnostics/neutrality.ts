@@ -1,4 +1,4 @@
-import { chiSquaredSurvival } from '../distributions.ts';
+import { chiSquaredSurvival } from '../distributions/chiSquared.ts';
 import { constant, equation } from '../linear/equation.ts';
 import { influence, longRunCovariance, ruleOfThumbLags } from '../linear/hac.ts';
 import { leastSquares } from '../linear/leastSquares.ts';

@@ -1,4 +1,4 @@
-import { chiSquaredSurvival } from '../distributions.ts';
+import { chiSquaredSurvival } from '../distributions/chiSquared.ts';
 import { longRunCovariance, ruleOfThumbLags } from '../linear/hac.ts';
 import { centralMoment, mean, sampleVariance } from '../moments.ts';
 import type { DiagnosticsResult, TestResult } from '../types.ts';
