@@ -7,6 +7,7 @@ import { startCluster } from '../../db/cluster.ts';
 import { connect } from '../../db/connection.ts';
 import { migrate } from '../../db/migrate.ts';
 import { type Env, EnvError, readEnv } from '../lib/env.ts';
+import { openLog } from '../lib/log.ts';
 import type { ServeOptions, Served } from '../lib/serving/serve.ts';
 import { buildWhenStale, ENTRY } from './build.mjs';
 import { installFromDebian } from './install.mjs';
@@ -36,10 +37,7 @@ export async function serve({ progress, signal, closers, onLoaded }: Options): P
   onLoaded();
 
   progress.step('Starting the server');
-  const entry: { serve(options: ServeOptions): Promise<Served> } = await import(
-    pathToFileURL(ENTRY).href
-  );
-  const served = await entry.serve({
+  const served = await runServer({
     env: { ...env, databaseUrl },
     onProgress: (text) => progress.step(text),
   });
@@ -121,6 +119,20 @@ async function migrateDatabase(url: string, env: Env, progress: Progress): Promi
     );
   } finally {
     await db.destroy();
+  }
+}
+
+/** The built server in this process. What goes wrong in it is kept whole in the log and told in a sentence. */
+async function runServer(options: ServeOptions): Promise<Served> {
+  try {
+    const entry: { serve: typeof runServer } = await import(pathToFileURL(ENTRY).href);
+    return await entry.serve(options);
+  } catch (error) {
+    openLog(options.env).fatal({ err: error }, 'the server could not start');
+    const why = error instanceof Error ? error.message : String(error);
+    throw new CommandError(
+      `The server could not start (${why}): its log ${options.env.mode === 'demo' ? `in ${options.env.dataDir} ` : ''}has the details.`,
+    );
   }
 }
 
