@@ -47,10 +47,10 @@ export function homeHeadline(month: HomeMonth): string {
 
 /** The lines under the headline: the largest surprise, then the economies the headline leaves out. */
 export function homeStandfirst({ released }: HomeMonth): string {
-  const [first, ...others] = [...released].sort(
-    (a, b) => Math.abs(b.surprise) - Math.abs(a.surprise),
-  );
+  const ordered = [...released].sort((a, b) => b.surprise - a.surprise);
+  const [first] = [...ordered].sort((a, b) => Math.abs(b.surprise) - Math.abs(a.surprise));
   if (!first) return '';
+  const others = ordered.filter((one) => one !== first);
   const figure = signed(first.surprise, 2);
   const lead = `${possessive(first.nameInText)} surprise, ${figure} percentage points,`;
   const sentences = [

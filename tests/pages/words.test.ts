@@ -1,0 +1,133 @@
+import { describe, expect, it } from 'vitest';
+import { pValue, shareWords, slopeWords } from '../../src/components/words/assumptions.ts';
+import { citation } from '../../src/components/words/citation.ts';
+import { timeLabel, weekdayLabel } from '../../src/components/words/dates.ts';
+import type { Reading } from '../../src/components/words/reading.ts';
+import { revisedAgainst } from '../../src/components/words/revisions.ts';
+import { explainerStandfirst } from '../../src/components/words/standfirst.ts';
+
+const reading: Reading = {
+  period: '2031-08',
+  growth: 1.143,
+  expected: 0.3095,
+  surprise: 0.84,
+  forecastSe: 0.45,
+  standardised: 1.9,
+  cumulated: 1,
+  change: 0.96,
+  previousSurprise: -0.12,
+  gap: 0.6,
+  lower: 0.2,
+  upper: 1,
+  standing: 'estimate',
+  persistent: true,
+  name: 'Implied output gap',
+  rho: 0.8,
+  confidence: 0.8,
+};
+
+describe('the standfirst of an explainer', () => {
+  it('states growth and expectation in per cent and the gap with its band', () => {
+    expect(explainerStandfirst(reading, 'Broad money')).toBe(
+      'Broad money rose 1.15 per cent on the month; 0.31 per cent was expected. ' +
+        'The model reads that as output 0.6 per cent above trend, within a band of +0.2 to +1.0 per cent.',
+    );
+  });
+
+  it('says fell where money shrank', () => {
+    const fell = {
+      ...reading,
+      growth: -0.32,
+      expected: 0.389,
+      gap: -0.5,
+      lower: -0.9,
+      upper: -0.1,
+    };
+    expect(explainerStandfirst(fell, 'Broad money')).toBe(
+      'Broad money fell 0.32 per cent on the month; growth of 0.39 per cent was expected. ' +
+        'The model reads that as output 0.5 per cent below trend, within a band of −0.9 to −0.1 per cent.',
+    );
+  });
+
+  it('is silent on a gap that is an assumption', () => {
+    const assumed = { ...reading, standing: 'assumption' as const };
+    expect(explainerStandfirst(assumed, 'Broad money')).toBe(
+      'Broad money rose 1.15 per cent on the month; 0.31 per cent was expected.',
+    );
+  });
+
+  it('calls the effect without persistence what it is', () => {
+    const effect = { ...reading, persistent: false };
+    const text = explainerStandfirst(effect, 'Broad money');
+    expect(text).toContain('same-month effect on output of +0.6 per cent');
+    expect(text).not.toContain('trend');
+  });
+});
+
+describe('what was revised', () => {
+  const now = { periods: ['2031-06', '2031-07', '2031-08'], surprise: [0.47, -0.12, 0.84] };
+  const before = { periods: ['2031-06', '2031-07'], surprise: [0.44, -0.12] };
+
+  it('marks what changed in print and leaves out the new month', () => {
+    const revised = revisedAgainst(now, before, [{ period: '2031-06', value: 0.44 }]);
+    expect(revised.rows.map(({ period, isChanged }) => [period, isChanged])).toEqual([
+      ['2031-06', true],
+      ['2031-07', false],
+    ]);
+    expect(revised.rows[1]!.first).toBeNull();
+    expect(revised).toMatchObject({ compared: 2, changed: 1, signChanges: 0 });
+  });
+
+  it('does not mark a change too small to print', () => {
+    const tiny = { periods: ['2031-06'], surprise: [0.472] };
+    const revised = revisedAgainst(now, tiny, []);
+    expect(revised.changed).toBe(0);
+  });
+
+  it('has nothing to compare with at the first release', () => {
+    expect(revisedAgainst(now, null, [])).toMatchObject({ compared: 0, largest: null });
+  });
+});
+
+describe('words of the assumptions', () => {
+  it('give a share with its 80% interval, and alone where it has no error', () => {
+    const slope = { lambda: 0.35, se_lambda: 0.1 } as Parameters<typeof shareWords>[0];
+    expect(shareWords(slope)).toBe('0.35 (0.22 to 0.48)');
+    expect(shareWords({ ...slope, se_lambda: null })).toBe('0.35');
+  });
+
+  it('give a fixed slope as the share it stands for', () => {
+    expect(slopeWords({ method: 'fixed', b: 0.25, se_lambda: 0.03 }, 'monthly')).toBe(
+      'Fixed at 0.20, with standard error 0.03',
+    );
+  });
+
+  it('never print a p-value of zero', () => {
+    expect(pValue(1e-9)).toBe('p < 0.001');
+    expect(pValue(0.234)).toBe('p = 0.23');
+  });
+});
+
+describe('dates and citations', () => {
+  const at = new Date('2031-09-24T07:00:00Z');
+
+  it('are in UTC', () => {
+    expect(weekdayLabel(at)).toBe('Wed 24 Sep 2031');
+    expect(timeLabel(at)).toBe('07:00\u00a0UTC');
+  });
+
+  it('name the release and where it stays', () => {
+    const cited = citation({
+      id: 'XCL-2031-08-r1',
+      economyName: 'Costa Lirra',
+      period: '2031-08',
+      publishedAt: at,
+      address: 'https://example.org/releases/XCL/2031-08/r1/',
+      persistent: true,
+    });
+    expect(cited).toBe(
+      'Slackwater (2031), “Costa Lirra: money surprise and implied output gap, August 2031”, release XCL-2031-08-r1, ' +
+        '24 September 2031. Model-implied figures. https://example.org/releases/XCL/2031-08/r1/',
+    );
+  });
+});
