@@ -4,6 +4,7 @@ import {
   gapFigure,
   growthFigure,
   growthPercent,
+  growthSize,
   hangs,
   monthName,
   periodLabel,
@@ -30,6 +31,12 @@ describe('figures', () => {
     expect(surpriseFigure(-0.0049)).toBe('0.00');
     expect(gapFigure(-0.04)).toBe('0.0');
     expect(growthFigure(-0.001)).toBe('0.00');
+  });
+
+  it('says the size of a fall as the rate itself has it, not as the rate of the opposite rise', () => {
+    expect(growthFigure(-10)).toBe('−9.52');
+    expect(growthSize(-10)).toBe('9.52');
+    expect(growthSize(10)).toBe('10.52');
   });
 
   it('prints gaps, standardised surprises and accounting parts with their own places', () => {

@@ -1,4 +1,4 @@
-import { accountingFigure, growthFigure, unsigned } from '../../lib/charts/figures.ts';
+import { accountingFigure, growthFigure, growthSize, unsigned } from '../../lib/charts/figures.ts';
 import { partNames, partOrder, type PartName } from '../../lib/charts/inflationParts.ts';
 import type { InflationResult } from '../../lib/econ/types.ts';
 import { listed } from './counting.ts';
@@ -60,7 +60,7 @@ export function sumsInPrint(values: number[], total: number): boolean {
 /** What prices did and how the model divides it, as running text. */
 export function accountingWords({ parts, total }: Accounting, pricesTitle: string): string {
   const of = (name: PartName) => parts.find((part) => part.name === name)?.value ?? null;
-  const change = growthFigure(Math.abs(total));
+  const change = growthSize(total);
   const verb =
     growthFigure(total) === growthFigure(0) ? 'were unchanged' : total < 0 ? 'fell' : 'rose';
   const first = `${pricesTitle} ${verb}${verb === 'were unchanged' ? '' : ` ${change} per cent`}.`;

@@ -1,10 +1,16 @@
-import { gapFigure, growthFigure, growthPercent, range } from '../../lib/charts/figures.ts';
+import {
+  gapFigure,
+  growthFigure,
+  growthSize,
+  growthPercent,
+  range,
+} from '../../lib/charts/figures.ts';
 import { periodNoun } from '../../lib/charts/periodLabels.ts';
 import type { Reading } from './reading.ts';
 
 /** "rose 1.15 per cent" or "fell 0.32 per cent", from log points. */
 export function moved(growth: number): string {
-  const figure = growthFigure(Math.abs(growth));
+  const figure = growthSize(growth);
   if (growthFigure(growth) === growthFigure(0)) return 'was unchanged';
   return `${growth < 0 ? 'fell' : 'rose'} ${figure} per cent`;
 }
@@ -40,7 +46,7 @@ export function explainerStandfirst(reading: Reading, moneyTitle: string): strin
 
 /** What was expected as running text: "0.31 per cent", "growth of 0.39 per cent" where money fell, "a fall of 0.10 per cent". */
 export function expectation({ growth, expected }: Pick<Reading, 'growth' | 'expected'>): string {
-  const figure = `${growthFigure(Math.abs(expected))} per cent`;
+  const figure = `${growthSize(expected)} per cent`;
   const falls = growthPercent(expected) < 0;
   if (falls) return growth < 0 ? figure : `a fall of ${figure}`;
   return growth < 0 ? `growth of ${figure}` : figure;

@@ -94,6 +94,11 @@ export function growthFigure(
   return unsigned(typeof logPoints === 'number' ? growthPercent(logPoints) : null, 2, options);
 }
 
+/** The size of a growth rate, for words that say which way it went: "fell 0.72 per cent". From log points. */
+export function growthSize(logPoints: number, options: FigureOptions = {}): string {
+  return unsigned(Math.abs(growthPercent(logPoints)), 2, options);
+}
+
 /** Two ends of a range: "+0.2 to +1.0"; an en dash where either is missing. */
 export function range(
   lower: number | null,
