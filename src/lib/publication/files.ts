@@ -1,8 +1,11 @@
 import type { ServiceContext } from '../services/context.ts';
 import { latestRelease } from '../services/releases/public.ts';
+import { csvOf } from '../services/series/csv.ts';
+import { listSeries } from '../services/series/list.ts';
+import { observations } from '../services/series/observations.ts';
 import type { View } from '../services/view.ts';
-import type { Kept } from './artefacts.ts';
-import { type Planned, imageAddresses, releaseFile } from './plan.ts';
+import { type Kept, keep } from './artefacts.ts';
+import { type Planned, imageAddresses, releaseFile, seriesFile } from './plan.ts';
 
 /** A file and one of the addresses it is reached at. */
 export interface PlacedFile {
@@ -12,6 +15,17 @@ export interface PlacedFile {
 
 /** All files that a release brings or changes at its moment. */
 export async function filesOf(
+  ctx: ServiceContext,
+  view: View,
+  release: Planned & { id: string },
+): Promise<PlacedFile[]> {
+  return [
+    ...(await frozenFiles(ctx, view, release)),
+    ...(await seriesFiles(ctx, view, release.economyCode)),
+  ];
+}
+
+async function frozenFiles(
   ctx: ServiceContext,
   view: View,
   release: Planned & { id: string },
@@ -31,4 +45,23 @@ export async function filesOf(
       : [releaseFile(release.id, name)];
     return addresses.map((address) => ({ address, kept }));
   });
+}
+
+/** The stable files of an economy's series, as they stand in the view; none for values we may not serve. */
+async function seriesFiles(
+  ctx: ServiceContext,
+  view: View,
+  economy: string,
+): Promise<PlacedFile[]> {
+  const all = await listSeries(ctx.db, view, { economy });
+  const placed = await Promise.all(
+    all.map(async (series) => {
+      const values = await observations(ctx.db, view, series);
+      if (values.length === 0) return null;
+      const bytes = new TextEncoder().encode(csvOf(series, values));
+      const kept = await keep(ctx, bytes, 'text/csv; charset=utf-8');
+      return { address: seriesFile(series.id), kept };
+    }),
+  );
+  return placed.filter((file) => file !== null);
 }
