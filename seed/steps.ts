@@ -96,15 +96,15 @@ function foundingSteps(assignment: Assignment, specification: { id: string }): S
   ];
 }
 
-/** Every month's date, and that of the month after the newest, stands in the calendar weeks before. */
+/** What is still to come at seeding stands in the calendar weeks ahead; older dates were told when scheduled. */
 function announcementSteps({ economy, reviewer, as, now, start, months }: Assignment): Step[] {
-  return [...months, addPeriods(months.at(-1)!, 1)].map((period) => {
+  return [...months, addPeriods(months.at(-1)!, 1)].flatMap((period) => {
     const { due } = releaseTimes(now, economy.slot, period);
+    if (due <= now) return [];
     const earliest = start.getTime() + 4 * HOUR;
-    return {
-      at: new Date(Math.max(earliest, due.getTime() - ANNOUNCED_AHEAD)),
-      work: () => announce(as(reviewer), { economy: economy.code, period, dueAt: due }),
-    };
+    const at = new Date(Math.max(earliest, due.getTime() - ANNOUNCED_AHEAD));
+    const announcement = { economy: economy.code, period, dueAt: due };
+    return [{ at, work: () => announce(as(reviewer), announcement) }];
   });
 }
 
