@@ -150,3 +150,31 @@ test('the first gaps are withheld until nine tenths of the start are forgotten',
     expect(inflation!.carry_over.findIndex((value) => value !== null)).toBe(withheld + 1);
   }
 });
+
+describe('money that grows the same in every period', () => {
+  const steady = {
+    start: '1995-01',
+    values: Array.from({ length: 120 }, (_, t) => Math.exp(t / 200)),
+  };
+  const rules: [string, Expectation, number][] = [
+    ['random walk', { rule: 'random_walk', window: { kind: 'rolling', length: 24 } }, 0],
+    ['adaptive', { rule: 'adaptive', gain: 0.3, window: { length: 24 } }, 12],
+  ];
+  test.each(rules)('has no surprise to standardise or to test: %s', (_, expectation, first) => {
+    const request = economy({ money: steady, expectation });
+    const { forecast_se, standardised_surprise, diagnostics } = compute(request);
+    expect(forecast_se.slice(first).every((error) => error === 0)).toBe(true);
+    expect(standardised_surprise.every((value) => value === null)).toBe(true);
+    expect(diagnostics).toMatchObject({
+      surprise: { mean_t: null },
+      ljung_box: { statistic: null, p: null },
+      jarque_bera: { statistic: null, p: null },
+      adf_money: null,
+      adf_growth: null,
+      neutrality: {
+        statistic: null,
+        reason: expectation.rule === 'adaptive' ? 'persistence' : 'collinear',
+      },
+    });
+  });
+});

@@ -56,8 +56,8 @@ function assemble(request: ComputeRequest, data: Data): ComputeResult {
   const path =
     early ??
     (isRegression(rule) ? attempt(() => expect(data, rule, rho >= 0 && rho < 1 ? rho : 0)) : null);
-  const inUse = path && attempt(() => slopeInUse(slope, gap, terms, path, activity));
-  if (faults.length > 0 || path === null || inUse === null) throw new RefusedError(faults);
+  const inUse = solvable && attempt(() => slopeInUse(slope, gap, terms, path, activity));
+  if (faults.length > 0 || path === null || !inUse) throw new RefusedError(faults);
 
   const implied = inUse.result.within_model
     ? impliedGap(path, inUse.parameters, request.confidence ?? 0.8)

@@ -26,6 +26,8 @@ export interface Data {
   activity: Float64Array;
   /** E_{t−1}[d_t] as supplied, log points a period. */
   surveyed: Float64Array;
+  /** What rounding alone may make of growth, log points: below it, money grows the same in every period. */
+  rounding: number;
   hasPrices: boolean;
   hasActivity: boolean;
 }
@@ -88,9 +90,15 @@ export function prepare(request: SeriesOfRequest): Data {
       request.surveyed_growth,
       Float64Array.from(request.surveyed_growth?.values ?? []),
     ),
+    rounding: 8 * Number.EPSILON * largest(money),
     hasPrices: request.prices !== undefined,
     hasActivity: request.activity !== undefined,
   };
+}
+
+/** Largest size among some numbers; 0 for none. */
+function largest(values: Float64Array): number {
+  return values.reduce((most, value) => Math.max(most, Math.abs(value)), 0);
 }
 
 /** f − 1 indicators over money's periods, of every season but the first month or quarter of the year. */

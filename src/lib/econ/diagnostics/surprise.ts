@@ -7,12 +7,15 @@ import type { DiagnosticsResult, TestResult } from '../types.ts';
  * Size and bias of the surprise as a forecast error (method, section 5), log points a period. `mean_t` uses Newey–West
  * errors with the rule of thumb's lags; it and `sd` are null for a single surprise, `mean_t` also where all are alike.
  */
-export function sizeOfSurprise(surprise: Float64Array): NonNullable<DiagnosticsResult['surprise']> {
+export function sizeOfSurprise(
+  surprise: Float64Array,
+  rounding: number,
+): NonNullable<DiagnosticsResult['surprise']> {
   const n = surprise.length;
   const centre = mean(surprise);
   const variance = sampleVariance(surprise);
   let meanT: number | null = null;
-  if (variance !== null && !isRounding(surprise)) {
+  if (variance !== null && !allAlike(surprise, rounding)) {
     const weighted = surprise.map((value) => (value - centre) / n);
     const [[longRun]] = longRunCovariance([weighted], ruleOfThumbLags(n), 1) as [[number]];
     meanT = longRun > 0 ? centre / Math.sqrt(longRun) : null;
@@ -31,10 +34,14 @@ export function sizeOfSurprise(surprise: Float64Array): NonNullable<DiagnosticsR
  * 1; χ²(h). Null statistic where there is one surprise, or all are alike.
  * @param perYear Periods a year, f.
  */
-export function ljungBox(surprise: Float64Array, perYear: number): TestResult & { lags: number } {
+export function ljungBox(
+  surprise: Float64Array,
+  perYear: number,
+  rounding: number,
+): TestResult & { lags: number } {
   const n = surprise.length;
   const lags = Math.max(1, Math.min(2 * perYear, Math.floor(n / 5)));
-  if (n < 2 || isRounding(surprise)) return { statistic: null, lags, p: null };
+  if (n < 2 || allAlike(surprise, rounding)) return { statistic: null, lags, p: null };
   const centre = mean(surprise);
   const deviations = surprise.map((value) => value - centre);
   const variance = sumOfProducts(deviations, 0);
@@ -51,8 +58,8 @@ export function ljungBox(surprise: Float64Array, perYear: number): TestResult & 
  * Jarque–Bera test of normality (Jarque & Bera 1980, Economics Letters 6:255–259), moments with divisor n; χ²(2). Null
  * where there is one surprise, or all are alike.
  */
-export function jarqueBera(surprise: Float64Array): TestResult {
-  if (surprise.length < 2 || isRounding(surprise)) return { statistic: null, p: null };
+export function jarqueBera(surprise: Float64Array, rounding: number): TestResult {
+  if (surprise.length < 2 || allAlike(surprise, rounding)) return { statistic: null, p: null };
   const variance = centralMoment(surprise, 2);
   const skewness = centralMoment(surprise, 3) / (variance * Math.sqrt(variance));
   const kurtosis = centralMoment(surprise, 4) / (variance * variance);
@@ -61,12 +68,13 @@ export function jarqueBera(surprise: Float64Array): TestResult {
   return { statistic, p: chiSquaredSurvival(statistic, 2) };
 }
 
-/** Whether all numbers are alike but for rounding, so that a statistic of their deviations would be 0/0. */
-function isRounding(values: Float64Array): boolean {
-  let largest = 0;
-  for (const value of values) largest = Math.max(largest, Math.abs(value));
-  const deviation = Math.sqrt(centralMoment(values, 2));
-  return deviation <= values.length * Number.EPSILON * largest;
+/**
+ * Whether all numbers are alike but for rounding, so that a statistic of their deviations would be 0/0. There is at
+ * least one.
+ * @param rounding Size of deviations that are rounding errors.
+ */
+export function allAlike(values: Float64Array, rounding: number): boolean {
+  return Math.sqrt(centralMoment(values, 2)) <= rounding;
 }
 
 function sumOfProducts(values: Float64Array, lag: number): number {

@@ -25,6 +25,6 @@ export function adaptiveExpectation(
     path.surprise[t - first] = surprise;
     expected += rule.gain * surprise;
   }
-  path.forecastError = pastErrors(path.surprise);
+  path.forecastError = pastErrors(path.surprise, data.rounding);
   return path;
 }

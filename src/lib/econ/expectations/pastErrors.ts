@@ -4,12 +4,13 @@ const FEWEST = 12;
 /**
  * Root mean square of all earlier surprises, for rules without a regression; NaN where there are fewer than 12
  * (method, section 2). Log points a period, one value a target.
+ * @param rounding Size of surprises that are rounding errors; an error of no more is 0.
  */
-export function pastErrors(surprise: Float64Array): Float64Array {
+export function pastErrors(surprise: Float64Array, rounding: number): Float64Array {
   let sum = 0;
   return surprise.map((value, i) => {
     const error = i < FEWEST ? NaN : Math.sqrt(sum / i);
     sum += value * value;
-    return error;
+    return error <= rounding ? 0 : error;
   });
 }

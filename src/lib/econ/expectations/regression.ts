@@ -71,7 +71,8 @@ export function regressionExpectation(
     let pathLeverage = 0;
     for (let i = 0; i < used; i++) pathLeverage += spread[i]! * spread[i]!;
 
-    const variance = ssr / (window.observations - used);
+    const s = Math.sqrt(ssr / (window.observations - used));
+    const variance = s > data.rounding ? s * s : 0;
     const i = t - first;
     path.expected[i] = forecast;
     path.surprise[i] = data.growth[t]! - forecast;

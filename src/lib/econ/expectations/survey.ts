@@ -28,6 +28,6 @@ export function surveyExpectation(data: Data): ExpectationPath {
     path.expected[t - first] = data.surveyed[t]!;
     path.surprise[t - first] = data.growth[t]! - data.surveyed[t]!;
   }
-  path.forecastError = pastErrors(path.surprise);
+  path.forecastError = pastErrors(path.surprise, data.rounding);
   return path;
 }

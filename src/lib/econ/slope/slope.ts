@@ -38,6 +38,7 @@ interface Share {
 /**
  * The slope by its method, with persistence (method, section 3). Estimates outside the model are reported and never
  * clipped: then b and its error are null (a given or solved b stays) and nothing is implied from them.
+ * @param path Null where the rule was refused; then what needs its surprises is refused without a further fault.
  * @param activity The activity equation, where it was run.
  * @throws RefusedError where the method cannot be carried out on these data.
  */
@@ -45,7 +46,7 @@ export function slopeInUse(
   slope: Slope,
   gap: Gap | undefined,
   terms: Terms,
-  path: ExpectationPath,
+  path: ExpectationPath | null,
   activity: ActivityEstimate | null,
 ): SlopeInUse {
   const share = shareOf(slope, terms, path, activity);
@@ -84,7 +85,7 @@ export function slopeInUse(
 function shareOf(
   slope: Slope,
   terms: Terms,
-  path: ExpectationPath,
+  path: ExpectationPath | null,
   activity: ActivityEstimate | null,
 ): Share {
   if (slope.method === 'fixed') {
@@ -109,7 +110,8 @@ function known(b: number, roots: number[] | null): Share {
   return { lambda: b / (1 + b), b, seLambda: null, roots, estimate: null };
 }
 
-function varianceOfSurprises(path: ExpectationPath): number {
+function varianceOfSurprises(path: ExpectationPath | null): number {
+  if (path === null) throw new RefusedError([]);
   const variance = sampleVariance(path.surprise);
   if (variance !== null) return variance;
   throw new RefusedError([
