@@ -1,4 +1,4 @@
-import { range, unsigned } from '../../lib/charts/figures.ts';
+import { unsigned } from '../../lib/charts/figures.ts';
 import type {
   Assumptions,
   ComputeResult,
@@ -65,12 +65,30 @@ export function persistenceWords(
     : `Estimated from activity: ${unsigned(rho, 2)} of a gap remains after one period`;
 }
 
-/** The output share with its 80% interval: "0.36 (0.30 to 0.42)". */
-export function shareWords({ lambda, se_lambda }: ComputeResult['slope']): string {
-  const share = unsigned(lambda, 2);
-  if (se_lambda === null) return share;
+/** The ends of the output share's 80% interval: "0.30 to 0.42"; null where it counts as known. */
+export function shareInterval({ lambda, se_lambda }: ComputeResult['slope']): string | null {
+  if (se_lambda === null) return null;
   const half = standardNormal80 * se_lambda;
-  return `${share} (${range(lambda - half, lambda + half, 2).replaceAll('+', '')})`;
+  return `${unsigned(lambda - half, 2)} to ${unsigned(lambda + half, 2)}`;
+}
+
+/** The output share with its 80% interval: "0.36 (0.30 to 0.42)". */
+export function shareWords(slope: ComputeResult['slope']): string {
+  const interval = shareInterval(slope);
+  const share = unsigned(slope.lambda, 2);
+  return interval === null ? share : `${share} (${interval})`;
+}
+
+/** Where a release's output share comes from and what it is: "Estimated from prices over all months: 0.39, 80% interval 0.35 to 0.44". */
+export function shareInUse(
+  slope: Slope,
+  result: ComputeResult['slope'],
+  frequency: Frequency,
+): string {
+  const from = slopeWords(slope, frequency);
+  const interval = shareInterval(result);
+  const ends = interval === null ? '' : `, 80% interval ${interval}`;
+  return slope.method === 'fixed' ? from + ends : `${from}: ${unsigned(result.lambda, 2)}${ends}`;
 }
 
 /** A series as a release used it: timing and adjustment in words. */
