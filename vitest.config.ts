@@ -6,7 +6,7 @@ const build = './tests/setup/build.ts';
 /** Tests on databases, tests that ask a built server, tests with a browser; every other test is plain. */
 const folders = {
   database: 'tests/{db,services,publication,seed,platform/database}/**/*.test.ts',
-  api: 'tests/{api,pages,security}/**/*.test.ts',
+  api: 'tests/{api,pages,security,platform/server}/**/*.test.ts',
   browser: 'tests/e2e/**/*.test.ts',
 };
 
