@@ -1,4 +1,4 @@
-const HEARTBEAT_MS = 10_000;
+const HEARTBEAT_MS = 20_000;
 
 /** How long, in words: "0.4 s", "48 s", "2 min 5 s". */
 export function duration(ms) {
