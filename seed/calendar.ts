@@ -6,6 +6,9 @@ const MINUTE = 60_000;
 const HOUR = 60 * MINUTE;
 const DAY = 24 * HOUR;
 
+/** Days without releases besides weekends; invented economies keep no others. */
+const HOLIDAYS = ['01-01', '12-25', '12-26'];
+
 /** A month's figures are not out before this many days after its end. */
 const DAYS_AFTER_MONTH = 25;
 
@@ -42,7 +45,7 @@ export function firstMonth(now: Date): string {
 
 /**
  * When a month's figures of an economy come out and when the desk works on them. The newest month is laid out
- * around the day of seeding; other months keep its day of the month, on the Friday before where that is a weekend.
+ * around the day of seeding; other months keep its day of the month, or the workday before where nobody works then.
  */
 export function releaseTimes(now: Date, slot: DemoSlot, period: string): ReleaseTimes {
   const due = dueAt(now, slot, periodDifference(newestMonth(now), period));
@@ -59,7 +62,7 @@ function dueAt(now: Date, slot: DemoSlot, monthsOn: number): Date {
   }
   const day = addMonths(new Date(startOfDay(now) + slot.day * DAY), monthsOn);
   const exact = monthsOn === 0 && slot.day > 0;
-  const workday = exact ? day : fridayOrEarlier(day);
+  const workday = exact ? day : workdayOrEarlier(day);
   return new Date(workday.getTime() + slot.hour * HOUR + slot.minute * MINUTE);
 }
 
@@ -74,8 +77,10 @@ function addMonths(day: Date, months: number): Date {
   return new Date(Date.UTC(year, month, Math.min(day.getUTCDate(), lastDay)));
 }
 
-function fridayOrEarlier(day: Date): Date {
-  const weekday = day.getUTCDay();
-  const back = weekday === 6 ? 1 : weekday === 0 ? 2 : 0;
-  return new Date(day.getTime() - back * DAY);
+/** The day itself, or the last one before it on which a statistical office works. */
+function workdayOrEarlier(day: Date): Date {
+  const isWeekend = day.getUTCDay() === 0 || day.getUTCDay() === 6;
+  const isHoliday = HOLIDAYS.includes(day.toISOString().slice(5, 10));
+  if (!isWeekend && !isHoliday) return day;
+  return workdayOrEarlier(new Date(day.getTime() - DAY));
 }

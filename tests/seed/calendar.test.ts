@@ -27,7 +27,10 @@ describe('the calendar of the demo', () => {
     expect(due('XDU', '2031-08').toISOString()).toBe('2031-10-11T07:00:00.000Z');
   });
 
-  test('keeps the day of the month, and the Friday before where that is a weekend', () => {
+  test('keeps the day of the month, or the workday before where nobody works then', () => {
+    const winter = new Date('2026-12-01T16:44:00Z');
+    expect(due('XBR', '2026-11', winter).toISOString()).toBe('2026-12-24T09:30:00.000Z');
+    expect(due('XES', '2026-11', winter).toISOString()).toBe('2026-12-31T09:00:00.000Z');
     expect(due('XAL', '2031-07').toISOString()).toBe('2031-08-22T08:00:00.000Z');
     expect(due('XAL', '2031-09').toISOString()).toBe('2031-10-22T08:00:00.000Z');
     expect(due('XES', '2031-09').toISOString()).toBe('2031-10-31T09:00:00.000Z');
