@@ -40,7 +40,7 @@ describe.each(demoEconomies)('the files of $name', (economy) => {
       for (const level of line.split(',').slice(1)) {
         expect(level).toMatch(/^\d+\.\d{2,}$/);
         expect(Number(level)).toBeGreaterThan(0);
-        expect(level.replace('.', '').replace(/^0+/, '').length).toBeGreaterThanOrEqual(3);
+        expect(level.replace('.', '').replace(/^0+/, '').length).toBeGreaterThanOrEqual(4);
       }
     }
   });
