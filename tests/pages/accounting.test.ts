@@ -59,7 +59,7 @@ describe('the accounting of a period', () => {
     expect(accountingWords(rose, 'Consumer prices')).toBe(
       'Consumer prices rose 0.52 per cent. In log points, expected money less trend accounts for +0.27, ' +
         'the surprise for +0.55 and carry-over from earlier surprises for +0.07. ' +
-        '0.37 points are left unexplained: consumer prices rose by less than the model allows for.',
+        'That leaves 0.37 points unexplained: consumer prices rose by less than the model allows for.',
     );
     const fell = accountingOf(inflation(-0.2, [0.1, 0.1, 0, -0.4]), 0, '2031-08')!;
     expect(accountingWords(fell, 'Consumer prices')).toContain(

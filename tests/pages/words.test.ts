@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { pValue, shareWords, slopeWords } from '../../src/components/words/assumptions.ts';
+import { pValue, shareInterval, slopeWords } from '../../src/components/words/assumptions.ts';
 import { citation } from '../../src/components/words/citation.ts';
 import { timeLabel, weekdayLabel } from '../../src/components/words/dates.ts';
 import type { Reading } from '../../src/components/words/reading.ts';
@@ -90,10 +90,10 @@ describe('what was revised', () => {
 });
 
 describe('words of the assumptions', () => {
-  it('give a share with its 80% interval, and alone where it has no error', () => {
-    const slope = { lambda: 0.35, se_lambda: 0.1 } as Parameters<typeof shareWords>[0];
-    expect(shareWords(slope)).toBe('0.35 (0.22 to 0.48)');
-    expect(shareWords({ ...slope, se_lambda: null })).toBe('0.35');
+  it('give a share’s 80% interval, and none where it has no error', () => {
+    const slope = { lambda: 0.35, se_lambda: 0.1 } as Parameters<typeof shareInterval>[0];
+    expect(shareInterval(slope)).toBe('0.22 to 0.48');
+    expect(shareInterval({ ...slope, se_lambda: null })).toBeNull();
   });
 
   it('give a fixed slope as the share it stands for', () => {

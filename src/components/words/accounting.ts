@@ -83,7 +83,7 @@ export function accountingWords({ parts, total }: Accounting, pricesTitle: strin
     sentences.push(
       Math.abs(rest) < 0.005
         ? 'Nothing is left unexplained.'
-        : `${size} points are left unexplained: ${pricesTitle.toLowerCase()} ${total < 0 ? 'fell' : 'rose'} by ${rest > 0 === total >= 0 ? 'more' : 'less'} than the model allows for.`,
+        : `That leaves ${size} points unexplained: ${pricesTitle.toLowerCase()} ${total < 0 ? 'fell' : 'rose'} by ${rest > 0 === total >= 0 ? 'more' : 'less'} than the model allows for.`,
     );
   }
   return sentences.join(' ');

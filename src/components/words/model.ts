@@ -1,6 +1,7 @@
 import { unsigned } from '../../lib/charts/figures.ts';
+import { periodNoun } from '../../lib/charts/periodLabels.ts';
 import type { ComputeRequest, ComputeResult } from '../../lib/econ/types.ts';
-import { pValue, shareWords } from './assumptions.ts';
+import { pValue, shareInterval } from './assumptions.ts';
 import { GATE_LEVEL, isGapAssumption } from '../../lib/services/releases/sentences.ts';
 import { persistenceInUse } from './reading.ts';
 
@@ -105,7 +106,8 @@ function noResponse({ slope }: ComputeResult, nameInText: string): Finding | nul
 function outputShare(request: ComputeRequest, result: ComputeResult): Finding {
   const { slope } = result;
   const title = 'Output share';
-  const numbers = `${shareWords(slope)}${slope.se_lambda === null ? '' : ', 80% interval'}.`;
+  const interval = shareInterval(slope);
+  const numbers = `${unsigned(slope.lambda, 2)}${interval === null ? '' : `, 80% interval ${interval}`}.`;
   const rho = persistenceInUse(request, result);
   if (!slope.within_model) {
     const what =
@@ -116,9 +118,11 @@ function outputShare(request: ComputeRequest, result: ComputeResult): Finding {
   }
   const share = unsigned(slope.lambda, 2);
   const rest = unsigned(1 - slope.lambda, 2);
+  const lead = request.slope.method === 'fixed' ? 'As the desk assumes' : 'As estimated';
+  const noun = periodNoun(result.periods[0]!);
   return {
     title,
-    words: `Of a surprise of 1 point, ${share} goes into output within the period and ${rest} into prices.`,
+    words: `${lead}, of a surprise of 1 point ${share} goes into output within the ${noun} and ${rest} into prices.`,
     numbers,
   };
 }
