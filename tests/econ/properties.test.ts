@@ -151,6 +151,17 @@ test('the first gaps are withheld until nine tenths of the start are forgotten',
   }
 });
 
+test('prices that never change leave neutrality no error to test by', () => {
+  const prices = { start: '1995-01', values: new Array<number>(300).fill(100) };
+  const { diagnostics } = compute(economy({ prices }));
+  expect(diagnostics.neutrality).toEqual({
+    statistic: null,
+    p: null,
+    coefficients: null,
+    reason: 'collinear',
+  });
+});
+
 describe('money that grows the same in every period', () => {
   const steady = {
     start: '1995-01',

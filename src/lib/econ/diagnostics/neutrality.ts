@@ -9,7 +9,7 @@ import type { Terms } from '../slope/terms.ts';
 import type { NeutralityResult } from '../types.ts';
 
 /**
- * The test that fits the rule; null without prices.
+ * The test that fits the rule; null without prices. An exact fit, which leaves no error to test by, counts as collinear.
  * @param order p: 0 for the random walk, the order, or under BIC the latest order used.
  * @param choice The slope's window, used by rules that do not learn by least squares, and its lags.
  */
@@ -56,7 +56,7 @@ function neutralityOfGrowth(
   const response = leastSquares(rows.columns.slice(0, k), rows.y);
   const pick = (values: Float64Array) => Float64Array.from(rows.rows, (t) => values[t]!);
   const growth = leastSquares([ones, ...past, ...seasons].map(pick), pick(data.growth));
-  if (response === null || growth === null) return without('collinear');
+  if (response === null || response.ssr === 0 || growth === null) return without('collinear');
 
   const coefficients = Array.from(response.coefficients.subarray(1, 3 + order));
   const lambda = coefficients[1]!;
@@ -96,13 +96,13 @@ function neutralityOfSurprises(
   const n = rows.rows.length;
   if (n <= columns.length) return without('too few');
   const fit = leastSquares(rows.columns, rows.y);
-  if (fit === null) return without('collinear');
-  const [, expected, current, carried] = fit.coefficients as unknown as number[];
-  const influences = [1, 2, 3].map((j) => influence(fit, j));
+  if (fit === null || fit.ssr === 0) return without('collinear');
+  const byCarried = influence(fit, 3);
+  const coefficients = Array.from(fit.coefficients);
   return waldTest(
-    [expected! - 1, current! + carried! - 1],
-    [influences[0]!, influences[1]!.map((value, i) => value + influences[2]![i]!)],
-    Array.from(fit.coefficients),
+    [coefficients[1]! - 1, coefficients[2]! + coefficients[3]! - 1],
+    [influence(fit, 1), influence(fit, 2).map((value, i) => value + byCarried[i]!)],
+    coefficients,
     choice.lags ?? ruleOfThumbLags(n),
     columns.length,
   );

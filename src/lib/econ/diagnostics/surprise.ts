@@ -1,5 +1,5 @@
 import { chiSquaredSurvival } from '../distributions/chiSquared.ts';
-import { longRunCovariance, ruleOfThumbLags } from '../linear/hac.ts';
+import { longRunVariance, ruleOfThumbLags } from '../linear/hac.ts';
 import { centralMoment, mean, sampleVariance } from '../moments.ts';
 import type { DiagnosticsResult, TestResult } from '../types.ts';
 
@@ -17,7 +17,7 @@ export function sizeOfSurprise(
   let meanT: number | null = null;
   if (variance !== null && !allAlike(surprise, rounding)) {
     const weighted = surprise.map((value) => (value - centre) / n);
-    const [[longRun]] = longRunCovariance([weighted], ruleOfThumbLags(n), 1) as [[number]];
+    const longRun = longRunVariance(weighted, ruleOfThumbLags(n), 1);
     meanT = longRun > 0 ? centre / Math.sqrt(longRun) : null;
   }
   return {

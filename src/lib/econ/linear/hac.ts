@@ -41,6 +41,15 @@ export function longRunCovariance(
   return covariance;
 }
 
+/** Long-run variance of one estimate, as {@link longRunCovariance} gives it. */
+export function longRunVariance(
+  influences: Float64Array,
+  lags: number,
+  coefficients: number,
+): number {
+  return longRunCovariance([influences], lags, coefficients)[0]![0]!;
+}
+
 /** Influence of each observation on coefficient j: its weight in the estimate times its residual; n numbers. */
 export function influence(fit: LeastSquares, j: number): Float64Array {
   return fit.weights(j).map((weight, i) => weight * fit.residuals[i]!);

@@ -1,5 +1,5 @@
 import { constant } from '../linear/equation.ts';
-import { influence, longRunCovariance } from '../linear/hac.ts';
+import { influence, longRunVariance } from '../linear/hac.ts';
 import { lagged, minus } from '../series.ts';
 import { fitSlopeEquation, type EstimationChoice } from './estimate.ts';
 import type { Terms } from './terms.ts';
@@ -30,9 +30,7 @@ export function lambdaFromPrices(terms: Terms, choice: EstimationChoice): Lambda
     sets = [[...surprises, minus(data.growth, surprise)], surprises];
   }
   const { fit, lags } = fitSlopeEquation(data.realBalances, sets, choice, 'prices');
-  const [[variance]] = longRunCovariance([influence(fit, 1)], lags, fit.coefficients.length) as [
-    [number],
-  ];
+  const variance = longRunVariance(influence(fit, 1), lags, fit.coefficients.length);
   return {
     lambda: fit.coefficients[1]!,
     seLambda: Math.sqrt(variance),

@@ -44,7 +44,7 @@ export function parseRequest(input: unknown): ComputeRequest {
           ['confidence'],
           'The confidence',
           'a number above 0 and below 1',
-          (value) => value > 0 && value < 1,
+          (value) => value > 0 && (1 + value) / 2 < 1,
         );
   const series = (name: 'money' | 'prices' | 'activity') =>
     fields[name] === undefined
