@@ -231,6 +231,11 @@ describe('a request is refused at', () => {
       }),
       ['/money/values', '/slope/lags'],
     ],
+    [
+      'a slope window too short and too many lags at once',
+      slope({ method: 'prices', window: { length: 3 }, lags: 3 }),
+      ['/slope/window/length', '/slope/lags'],
+    ],
   ];
   test.each(cases)('%s', (_, input, pointers) => {
     const faults = faultsOf(input);

@@ -45,14 +45,7 @@ export function regressionExpectation(
   for (let s = firstRow; s < first; s++) window.add(rows[s]!, data.growth[s]!);
 
   for (let t = first; t < data.length; t++) {
-    if (t > first) {
-      window.add(rows[t - 1]!, data.growth[t - 1]!);
-      if (kind === 'rolling') {
-        const oldest = t - 1 - length;
-        window.remove(rows[oldest]!, data.growth[oldest]!);
-        if (!window.accurate) refactor(window, rows, data.growth, oldest + 1, t);
-      }
-    }
+    if (t > first) advance(window, rows, data.growth, t, kind === 'rolling' ? length : null);
     if (window.rankDeficient) throw rankDeficient(data, t);
     const x = rows[t]!;
     const order = chooses ? leastInformation(window, fixed.length, largest) : largest;
@@ -105,15 +98,24 @@ function leastInformation(window: UpdatedLeastSquares, fixed: number, largest: n
   return best;
 }
 
-function refactor(
+/**
+ * Moves a window on so that it ends at t − 1.
+ * @param length How many rows it keeps; null where it keeps all.
+ */
+function advance(
   window: UpdatedLeastSquares,
   rows: Float64Array[],
   growth: Float64Array,
-  from: number,
-  to: number,
+  t: number,
+  length: number | null,
 ): void {
+  window.add(rows[t - 1]!, growth[t - 1]!);
+  if (length === null) return;
+  const oldest = t - 1 - length;
+  window.remove(rows[oldest]!, growth[oldest]!);
+  if (window.accurate) return;
   window.clear();
-  for (let s = from; s < to; s++) window.add(rows[s]!, growth[s]!);
+  for (let s = oldest + 1; s < t; s++) window.add(rows[s]!, growth[s]!);
 }
 
 function transpose(columns: Float64Array[], length: number): Float64Array[] {

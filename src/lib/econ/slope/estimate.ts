@@ -2,6 +2,7 @@ import { equation, type Equation } from '../linear/equation.ts';
 import { ruleOfThumbLags } from '../linear/hac.ts';
 import { leastSquares, type LeastSquares } from '../linear/leastSquares.ts';
 import { RefusedError } from '../refusal.ts';
+import type { Fault } from '../types.ts';
 
 /** Which rows a slope equation uses and how its errors are computed. */
 export interface EstimationChoice {
@@ -41,42 +42,53 @@ export function fitSlopeEquation(
     if (fit !== null) break;
   }
   const n = rows.rows.length;
-  const k = rows.columns.length;
-  const what = `The equation that estimates the slope from ${series}`;
-  if (choice.window !== undefined && choice.window.length <= k) {
-    throw refuse(
-      '/slope/window/length',
-      `${what} has ${k} coefficients, so its window must hold at least ${k + 1} periods, not ${choice.window.length}.`,
-    );
-  }
-  if (n <= k) {
-    throw refuse(
-      `/${series}/values`,
-      `${what} has ${k} coefficients and needs more periods than that, but only ${n} have all its terms. Load a longer series.`,
-    );
-  }
-  if (fit === null) {
-    throw refuse(
-      `/${series}/values`,
-      `${what} cannot be solved: over these periods its terms move together, so that their effects cannot be told apart.`,
-    );
-  }
-  if (fit.ssr === 0) {
-    throw refuse(
-      `/${series}/values`,
-      `${what} fits every period exactly, so the error of its estimate cannot be measured. Check whether the series is a computed one.`,
-    );
-  }
   const lags = choice.lags ?? ruleOfThumbLags(n);
-  if (choice.lags !== undefined && choice.lags >= n) {
-    throw refuse(
-      '/slope/lags',
-      `The number of lags must be below the ${n} periods of the slope's equation, not ${choice.lags}.`,
-    );
-  }
+  const faults = [unfit(fit, n, rows.columns.length, choice, series), excessive(choice, n)];
+  const found = faults.filter((fault) => fault !== null);
+  if (found.length > 0 || fit === null) throw new RefusedError(found);
   return { fit, lags };
 }
 
-function refuse(pointer: string, message: string): RefusedError {
-  return new RefusedError([{ pointer, message }]);
+/** Why an equation of k coefficients on n periods gives no estimate; null where it gives one. */
+function unfit(
+  fit: LeastSquares | null,
+  n: number,
+  k: number,
+  { window }: EstimationChoice,
+  series: 'prices' | 'activity',
+): Fault | null {
+  const what = `The equation that estimates the response of ${series} to money`;
+  if (window !== undefined && window.length <= k) {
+    return {
+      pointer: '/slope/window/length',
+      message: `${what} has ${k} coefficients, so its window must hold at least ${k + 1} periods, not ${window.length}.`,
+    };
+  }
+  const pointer = `/${series}/values`;
+  if (n <= k) {
+    return {
+      pointer,
+      message: `${what} has ${k} coefficients and needs more periods than that, but only ${n} have all its terms. Load a longer series.`,
+    };
+  }
+  if (fit === null) {
+    return {
+      pointer,
+      message: `${what} cannot be solved: over these periods its terms move together, so that their effects cannot be told apart.`,
+    };
+  }
+  if (fit.ssr > 0) return null;
+  return {
+    pointer,
+    message: `${what} fits every period exactly, so the error of its estimate cannot be measured. Check whether the series is a computed one.`,
+  };
+}
+
+/** The fault of more lags than the equation's n periods can bear. */
+function excessive({ lags }: EstimationChoice, n: number): Fault | null {
+  if (lags === undefined || lags < n) return null;
+  return {
+    pointer: '/slope/lags',
+    message: `The number of lags must be below the ${n} periods of the slope's equation, not ${lags}.`,
+  };
 }
