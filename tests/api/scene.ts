@@ -32,9 +32,8 @@ const WITH_PERSISTENCE: Assumptions = { ...WITHOUT_PERSISTENCE, gap: { persisten
 export type Scene = Awaited<ReturnType<typeof openScene>>;
 
 /**
- * XTA has two public releases, 2030-11 and 2030-12, of two vintages; XTB, whose money may not be passed on, has one
- * of 2030-12 and a persistent gap, and a second one under embargo; XTC has only one under embargo, unannounced to
- * nobody, and XTD a draft.
+ * XTA has two public releases, 2030-11 and 2030-12, of two vintages, without persistence; XTB, whose money may not be
+ * passed on, has one of 2030-11 with a persistent gap, and one of 2030-12 under embargo; XTD has a draft.
  */
 export async function openScene() {
   const desk = await openDesk();
@@ -166,7 +165,12 @@ async function release(
   const id = await draftRelease(editor, { economy, period, vintageId, specificationId });
   await computeRelease(editor, id);
   const version = await desk.versionOf(id);
-  await writeRelease(editor, { id, version, headline: `${period} is out`, explainer: 'Words.' });
+  await writeRelease(editor, {
+    id,
+    version,
+    headline: `${economy} ${period} is out`,
+    explainer: 'Words.',
+  });
   await submitRelease(editor, id);
   await approveRelease(desk.as('reviewer'), { id, version: await desk.versionOf(id) });
   await scheduleRelease(desk.as('reviewer'), { id, at: new Date(at) });

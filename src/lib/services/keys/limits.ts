@@ -33,7 +33,7 @@ export interface Limits {
 
 const SETTLE_MS = 1_000;
 /** A key not settled for longer than this is settled before its next call is answered. */
-const STALE_MS = 1_500;
+const STALE_MS = 1_000;
 const KEPT_SECONDS = 24 * 3_600;
 
 /** Calls of a key in one span that the database does not have yet. */
