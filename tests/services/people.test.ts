@@ -3,6 +3,8 @@ import { pool as connectPool } from '../../db/connection.ts';
 import { type Auth, actorOf, ask, confirmAddress, createAuth } from '../../src/lib/auth.ts';
 import type { Message } from '../../src/lib/mail.ts';
 import { createPerson } from '../../src/lib/services/people/create.ts';
+import { getProfile } from '../../src/lib/services/people/profile.ts';
+import { renameSelf } from '../../src/lib/services/people/rename.ts';
 import { setRole } from '../../src/lib/services/people/setRole.ts';
 import { signUp } from '../../src/lib/services/people/signUp.ts';
 import { type Desk, openDesk, PASSWORD } from './desk.ts';
@@ -151,6 +153,17 @@ describe('a forgotten password', () => {
   test('of nobody sends nothing', async () => {
     await ask(auth, client(), '/request-password-reset', { email: 'nobody@example.org' });
     expect(mails).toEqual([]);
+  });
+});
+
+describe('a profile', () => {
+  test('has a name that its person changes, recorded once', async () => {
+    await renameSelf(desk.as('otherEditor'), { name: 'Second editor' });
+    await renameSelf(desk.as('otherEditor'), { name: 'Second editor' });
+    const profile = await getProfile(desk.as('otherEditor'));
+    expect(profile).toMatchObject({ name: 'Second editor', email: 'othereditor@example.org' });
+    const trail = await desk.trail(`person ${desk.actors.otherEditor.id}`);
+    expect(trail).toEqual(['person.created', 'person.renamed']);
   });
 });
 

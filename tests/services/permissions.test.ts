@@ -3,6 +3,8 @@ import type { Role, ServiceContext } from '../../src/lib/services/context.ts';
 import { createEconomy } from '../../src/lib/services/economies/create.ts';
 import { listDeskEconomies } from '../../src/lib/services/economies/list.ts';
 import { createPerson } from '../../src/lib/services/people/create.ts';
+import { getProfile } from '../../src/lib/services/people/profile.ts';
+import { renameSelf } from '../../src/lib/services/people/rename.ts';
 import { setRole } from '../../src/lib/services/people/setRole.ts';
 import { approveRelease } from '../../src/lib/services/releases/approve.ts';
 import { chooseInputs } from '../../src/lib/services/releases/chooseInputs.ts';
@@ -26,6 +28,7 @@ import { type Desk, openDesk, text } from './desk.ts';
 
 /** The table "Who may what" of the product, row by row; it is written here, not taken from the code. */
 const table = {
+  'own profile': ['subscriber', 'editor', 'reviewer', 'administrator'],
   'economies and series metadata, vintages, specification drafts, release drafts, submit': [
     'editor',
   ],
@@ -42,6 +45,10 @@ const inputs = { vintageId: '1', specificationId: '1' };
 
 /** Every verb under the row of the table it belongs to, called with something that does not exist. */
 const verbs: Record<Row, Record<string, Verb>> = {
+  'own profile': {
+    getProfile,
+    renameSelf: (ctx) => renameSelf(ctx, { name: ' ' }),
+  },
   'economies and series metadata, vintages, specification drafts, release drafts, submit': {
     createEconomy: (ctx) => createEconomy(ctx, {} as never),
     acceptVintage: (ctx) =>
