@@ -2,6 +2,8 @@ import { describe, expect, it } from 'vitest';
 import { pValue, shareInterval, slopeWords } from '../../src/components/words/assumptions.ts';
 import { citation } from '../../src/components/words/citation.ts';
 import { timeLabel, weekdayLabel } from '../../src/components/words/dates.ts';
+import { historyWords, ordinal } from '../../src/components/words/history.ts';
+import { quotable } from '../../src/components/words/quotable.ts';
 import type { Reading } from '../../src/components/words/reading.ts';
 import { revisedAgainst } from '../../src/components/words/revisions.ts';
 import { explainerStandfirst } from '../../src/components/words/standfirst.ts';
@@ -61,6 +63,72 @@ describe('the standfirst of an explainer', () => {
     const text = explainerStandfirst(effect, 'Broad money');
     expect(text).toContain('same-month effect on output of +0.6 per cent');
     expect(text).not.toContain('trend');
+  });
+});
+
+describe('sentences to quote', () => {
+  it('carry their size, period and source', () => {
+    expect(quotable(reading, 'Costa Lirra', null)).toEqual([
+      'Costa Lirra’s money growth was 0.84 percentage points above expectation in August 2031, according to Slackwater.',
+      'Slackwater’s model implies output in Costa Lirra 0.6 per cent above trend in August 2031, within a band of +0.2 to +1.0 per cent; ' +
+        'it is not a measurement of output.',
+    ]);
+  });
+
+  it('say of an assumed gap what has to be said and nothing else', () => {
+    const assumed = { ...reading, standing: 'assumption' as const };
+    expect(quotable(assumed, 'Estavel', 'The gap is an assumption.')[1]).toBe(
+      'The gap is an assumption.',
+    );
+  });
+
+  it('call a surprise below .05 points level', () => {
+    expect(quotable({ ...reading, surprise: -0.04 }, 'the Brannoch Isles', null)[0]).toBe(
+      'The Brannoch Isles’ money growth was level with expectation in August 2031, according to Slackwater.',
+    );
+  });
+});
+
+describe('how a surprise stands in its history', () => {
+  const fact = {
+    period: '2031-08',
+    surprise: {
+      period: '2031-08',
+      value: 0.84,
+      side: 'above' as const,
+      change: null,
+      largest_since: { period: '2029-01', value: 1.25, from: '2029-01' },
+      rank: { from_top: 2, by_size: 3, of: 120, from: '2021-09', to: '2031-08' },
+      run: { periods: 4, from: '2031-05', to: '2031-08' },
+    },
+  };
+
+  it('names records, runs and rank with the periods that prove them', () => {
+    expect(historyWords(fact)).toBe(
+      'The farthest above expectation since January 2029. Growth has been above expectation for four months, ' +
+        'from May 2031 on. By size it ranks 3rd of the 120 months since September 2021.',
+    );
+  });
+
+  it('keeps to the rank where the surprise is level', () => {
+    const level = { ...fact, surprise: { ...fact.surprise, value: 0.03 } };
+    expect(historyWords(level)).toBe(
+      'By size it ranks 3rd of the 120 months since September 2021.',
+    );
+  });
+
+  it('writes ordinals', () => {
+    expect([1, 2, 3, 4, 11, 12, 13, 21, 112].map(ordinal)).toEqual([
+      '1st',
+      '2nd',
+      '3rd',
+      '4th',
+      '11th',
+      '12th',
+      '13th',
+      '21st',
+      '112th',
+    ]);
   });
 });
 
