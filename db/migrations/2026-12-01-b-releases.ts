@@ -78,8 +78,9 @@ export async function up(db: Kysely<any>): Promise<void> {
       explainer text not null default '',
       vintage_id bigint not null references vintage (id),
       specification_id bigint not null references specification (id),
-      request jsonb,
-      result jsonb,
+      -- json, not jsonb: the order of its fields is part of the published bytes
+      request json,
+      result json,
       computed_at timestamptz,
       method_version text,
       build text,

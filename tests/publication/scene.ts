@@ -1,13 +1,13 @@
 import { mkdtemp, rm } from 'node:fs/promises';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
-import { brotliCompressSync, gzipSync } from 'node:zlib';
 import type { Db } from '../../db/connection.ts';
 import { folderStore } from '../../src/lib/publication/store.ts';
 import type { Workers } from '../../src/lib/publication/workers.ts';
 import type { ServiceContext } from '../../src/lib/services/context.ts';
 import { listReleases } from '../../src/lib/services/releases/public.ts';
 import { testDatabase } from '../setup/database.ts';
+import { plainWorkers } from '../setup/workers.ts';
 
 /** One economy with a vintage and a specification, and a clock that the test moves. */
 export async function scene() {
@@ -60,27 +60,17 @@ export async function scene() {
 
 /** Pages that list the releases of their view, so that a test can read off a page what it was drawn with. */
 function listingWorkers(db: Db): Workers {
-  const unused = () => Promise.reject(new Error('not used here'));
-  return {
+  return plainWorkers({
     async page(address, view) {
       const releases = await listReleases(db, view);
-      const text = `${address}: ${releases
-        .map((release) => release.period)
-        .sort()
-        .join(' ')}`;
+      const periods = releases.map((release) => release.period).sort();
       return {
         status: address === '/404/' ? 404 : 200,
         headers: { 'content-type': 'text/html; charset=utf-8' },
-        body: new TextEncoder().encode(text),
+        body: new TextEncoder().encode(`${address}: ${periods.join(' ')}`),
       };
     },
-    async compress(bytes) {
-      return { br: brotliCompressSync(bytes), gzip: gzipSync(bytes) };
-    },
-    shareImage: unused,
-    compute: unused,
-    close: async () => {},
-  };
+  });
 }
 
 async function furnish(db: Db): Promise<void> {

@@ -4,15 +4,14 @@ import { join } from 'node:path';
 import { pool } from '../../db/connection.ts';
 import { createAuth } from '../../src/lib/auth.ts';
 import { startClock } from '../../src/lib/clock.ts';
-import { compute } from '../../src/lib/econ/compute.ts';
 import { readEnv } from '../../src/lib/env.ts';
 import { openLog } from '../../src/lib/log.ts';
 import type { Mailer } from '../../src/lib/mail.ts';
 import { folderStore } from '../../src/lib/publication/store.ts';
-import { perform } from '../../src/lib/publication/tasks.ts';
 import type { Workers } from '../../src/lib/publication/workers.ts';
 import type { Runtime } from '../../src/lib/runtime.ts';
 import { testDatabase } from '../setup/database.ts';
+import { plainWorkers } from '../setup/workers.ts';
 
 export interface Stage {
   runtime: Runtime;
@@ -41,7 +40,7 @@ export async function seedStage(): Promise<Stage> {
       db: database.db,
       clock,
       store: folderStore(join(dataDir, 'artefacts')),
-      workers: plainWorkers(drawn),
+      workers: drawingWorkers(drawn),
       mail,
       auth: createAuth({ pool: people, env, mail }),
       log: openLog(env),
@@ -56,23 +55,12 @@ export async function seedStage(): Promise<Stage> {
   };
 }
 
-function plainWorkers(drawn: Stage['drawn']): Workers {
-  const parts = { fonts: '', render: () => Promise.reject(new Error('Nothing is rendered here')) };
-  return {
+function drawingWorkers(drawn: Stage['drawn']): Workers {
+  return plainWorkers({
     async page(address, { at }) {
       drawn.push({ address, at });
       const body = new TextEncoder().encode(`${address} at ${at.toISOString()}`);
       return { status: address === '/404/' ? 404 : 200, headers: {}, body };
     },
-    shareImage: async ({ title }) => ({
-      svg: `<svg xmlns="http://www.w3.org/2000/svg"><title>${title}</title></svg>`,
-      png: new Uint8Array([0x89, 0x50, 0x4e, 0x47]),
-      alt: title,
-      caption: title,
-    }),
-    compute: async (request) => compute(request),
-    compress: (bytes) =>
-      perform({ kind: 'compress', bytes }, parts) as ReturnType<Workers['compress']>,
-    close: async () => {},
-  };
+  });
 }

@@ -1,11 +1,8 @@
 import { mkdtemp, rm } from 'node:fs/promises';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
-import { brotliCompressSync, gzipSync } from 'node:zlib';
-import { compute } from '../../src/lib/econ/compute.ts';
 import { periodsFrom } from '../../src/lib/econ/periods.ts';
 import { folderStore } from '../../src/lib/publication/store.ts';
-import type { Workers } from '../../src/lib/publication/workers.ts';
 import type { Actor, Role, ServiceContext } from '../../src/lib/services/context.ts';
 import { type NewEconomy, createEconomy } from '../../src/lib/services/economies/create.ts';
 import { createPerson } from '../../src/lib/services/people/create.ts';
@@ -19,6 +16,7 @@ import { approveSpecification } from '../../src/lib/services/specifications/appr
 import { draftSpecification } from '../../src/lib/services/specifications/draft.ts';
 import { acceptVintage } from '../../src/lib/services/vintages/accept.ts';
 import { testDatabase } from '../setup/database.ts';
+import { plainWorkers } from '../setup/workers.ts';
 
 export type Desk = Awaited<ReturnType<typeof openDesk>>;
 
@@ -35,7 +33,7 @@ export async function openDesk() {
     now: () => new Date(clock.at),
     actor,
     store: folderStore(folder),
-    workers: plainWorkers,
+    workers: plainWorkers(),
     publicUrl: 'http://127.0.0.1:1',
     build: 'test',
   });
@@ -179,17 +177,4 @@ const anEconomy: Omit<NewEconomy, 'code'> = {
     money: { title: 'Broad money', ...series },
     prices: { title: 'Consumer prices', ...series },
   },
-};
-
-/** What the pool of threads does, done here; pages and images are stand-ins. */
-const plainWorkers: Workers = {
-  page: async (address) => ({
-    status: address === '/404/' ? 404 : 200,
-    headers: { 'content-type': 'text/html; charset=utf-8' },
-    body: text(address),
-  }),
-  shareImage: async () => ({ svg: '<svg/>', png: text('png'), alt: '', caption: '' }),
-  compute: async (request) => compute(request),
-  compress: async (bytes) => ({ br: brotliCompressSync(bytes), gzip: gzipSync(bytes) }),
-  close: async () => {},
 };

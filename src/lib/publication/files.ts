@@ -1,11 +1,15 @@
 import type { ServiceContext } from '../services/context.ts';
 import { latestRelease } from '../services/releases/public.ts';
 import { csvOf } from '../services/series/csv.ts';
+import { mayServeInputs } from '../services/series/mayServeInputs.ts';
 import { listSeries } from '../services/series/list.ts';
 import { observations } from '../services/series/observations.ts';
 import type { View } from '../services/view.ts';
 import { type Kept, keep } from './artefacts.ts';
 import { type Planned, imageAddresses, releaseFile, seriesFile } from './plan.ts';
+
+/** Files of a release that hold its input values: public only where every licence lets us serve them. */
+const WITH_INPUTS = new Set(['request.json', 'inputs.csv', 'bundle.zip']);
 
 /** A file and one of the addresses it is reached at. */
 export interface PlacedFile {
@@ -38,7 +42,9 @@ async function frozenFiles(
     .execute();
   const newest = await latestRelease(ctx.db, view, release.economyCode);
   const isNewest = newest === null || newest.id === release.id;
+  const servesInputs = await mayServeInputs(ctx.db, release.economyCode);
   return frozen.flatMap(({ name, hash, media_type, size }) => {
+    if (WITH_INPUTS.has(name) && !servesInputs) return [];
     const kept = { hash, mediaType: media_type, size: Number(size) };
     const addresses = media_type.startsWith('image/')
       ? imageAddresses(release, name, isNewest)

@@ -1,9 +1,12 @@
+import type { ReleasedFigure } from '../econ/facts.ts';
 import type { ComputeRequest, ComputeResult } from '../econ/types.ts';
 import { buildId, methodVersion } from '../build.ts';
 import type { InTransaction, ServiceContext } from '../services/context.ts';
 import { ServiceError } from '../services/context.ts';
+import { firstPublished } from '../services/releases/public.ts';
 import { type ReleaseValue, valuesOf } from '../services/series/concepts.ts';
-import { figuresFile } from '../services/series/figuresFile.ts';
+import { figuresFile, inputsFile } from '../services/series/figuresFile.ts';
+import { bundleOf } from './bundle.ts';
 import { type Kept, keep, recordArtefacts } from './artefacts.ts';
 
 /** Everything of a release that is fixed at approval: drawn and stored, waiting for the transaction that keeps it. */
@@ -25,7 +28,9 @@ export async function prepareFreeze(ctx: ServiceContext, releaseId: string): Pro
     )
     .select([
       'release.period',
+      'release.economy_code',
       'release.headline',
+      'release.explainer',
       'release.version',
       'release.request',
       'release.result',
@@ -60,26 +65,66 @@ export async function prepareFreeze(ctx: ServiceContext, releaseId: string): Pro
     source: release.source,
     methodVersion,
   });
+  const { facts, race } = await ctx.workers.examine(
+    request,
+    result,
+    await releasedFigures(ctx, release.economy_code),
+  );
   const values = valuesOf(result, request);
   const json = (value: unknown) => text(`${JSON.stringify(value)}\n`);
-  const files: [string, Uint8Array, string][] = [
-    ['surprise-wide.svg', text(image.svg), 'image/svg+xml'],
-    ['surprise-wide.png', image.png, 'image/png'],
-    ['request.json', json(request), 'application/json'],
-    ['result.json', json(result), 'application/json'],
-    ['figures.csv', text(figuresFile(values)), 'text/csv; charset=utf-8'],
+  const files: FileToKeep[] = [
+    { name: 'surprise-wide.svg', bytes: text(image.svg), mediaType: 'image/svg+xml' },
+    { name: 'surprise-wide.png', bytes: image.png, mediaType: 'image/png' },
+    { name: 'request.json', bytes: json(request), mediaType: 'application/json' },
+    { name: 'result.json', bytes: json(result), mediaType: 'application/json' },
+    {
+      name: 'inputs.csv',
+      bytes: text(inputsFile(request)),
+      mediaType: 'text/csv; charset=utf-8',
+    },
+    { name: 'facts.json', bytes: json(facts), mediaType: 'application/json' },
+    { name: 'race.json', bytes: json(race), mediaType: 'application/json' },
+    { name: 'figures.csv', bytes: text(figuresFile(values)), mediaType: 'text/csv; charset=utf-8' },
+    {
+      name: 'explainer.md',
+      bytes: text(`# ${release.headline}\n\n${release.explainer}\n`),
+      mediaType: 'text/markdown; charset=utf-8',
+    },
   ];
+  files.push({ name: 'bundle.zip', bytes: bundleOf(files), mediaType: 'application/zip' });
   return {
     releaseId,
     version: release.version,
     values,
     files: await Promise.all(
-      files.map(async ([name, bytes, mediaType]) => ({
+      files.map(async ({ name, bytes, mediaType }) => ({
         name,
         kept: await keep(ctx, bytes, mediaType),
       })),
     ),
   };
+}
+
+interface FileToKeep {
+  name: string;
+  bytes: Uint8Array;
+  mediaType: string;
+}
+
+/** What earlier releases of the economy said of their own periods, for the facts on what was revised. */
+async function releasedFigures(ctx: ServiceContext, economy: string): Promise<ReleasedFigure[]> {
+  const view = { at: ctx.now() };
+  const [surprises, gaps] = await Promise.all(
+    ['money_surprise', 'implied_gap'].map((indicator) =>
+      firstPublished(ctx.db, view, { economy, indicator }),
+    ),
+  );
+  const gapOf = new Map(gaps!.map(({ period, value }) => [period, value]));
+  return surprises!.map(({ period, value }) => ({
+    period,
+    surprise: value,
+    gap: gapOf.get(period) ?? null,
+  }));
 }
 
 /**

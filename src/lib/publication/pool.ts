@@ -2,7 +2,7 @@ import { Piscina } from 'piscina';
 import { RefusedError } from '../econ/refusal.ts';
 import type { ShareImage } from '../images/shareImage.ts';
 import type { Computed, Task } from './tasks.ts';
-import type { RenderedPage, Workers } from './workers.ts';
+import type { Examined, RenderedPage, Workers } from './workers.ts';
 
 /**
  * The worker threads of a process. `entry` is a module that exports `work(task)`; each thread gets `workerData`
@@ -30,6 +30,8 @@ export function startPool(options: {
       if ('faults' in answer) throw new RefusedError(answer.faults);
       return answer.result;
     },
+    examine: (request, result, released) =>
+      run({ kind: 'examine', request, result, released }) as Promise<Examined>,
     compress: (bytes) =>
       run({ kind: 'compress', bytes }) as Promise<{ br: Uint8Array; gzip: Uint8Array }>,
     close: () => pool.close(),

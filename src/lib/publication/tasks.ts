@@ -1,17 +1,25 @@
 import { brotliCompressSync, constants, gzipSync } from 'node:zlib';
 import type { Fault } from '../econ/types.ts';
 import { compute } from '../econ/compute.ts';
+import { type ReleasedFigure, facts } from '../econ/facts.ts';
+import { type RaceResult, race } from '../econ/race.ts';
 import { RefusedError } from '../econ/refusal.ts';
 import { type ShareImageInput, shareImage } from '../images/shareImage.ts';
 import type { ComputeRequest, ComputeResult } from '../econ/types.ts';
 import type { View } from '../services/view.ts';
-import type { RenderedPage } from './workers.ts';
+import type { Examined, RenderedPage } from './workers.ts';
 
 /** What is sent to a worker thread. */
 export type Task =
   | { kind: 'page'; address: string; view: View }
   | { kind: 'shareImage'; input: ShareImageInput }
   | { kind: 'compute'; request: ComputeRequest }
+  | {
+      kind: 'examine';
+      request: ComputeRequest;
+      result: ComputeResult;
+      released: ReleasedFigure[];
+    }
   | { kind: 'compress'; bytes: Uint8Array };
 
 /** A refusal crosses threads as data: an error would lose its faults on the way. */
@@ -29,6 +37,8 @@ export async function perform(
       return shareImage(task.input, parts.fonts);
     case 'compute':
       return computed(task.request);
+    case 'examine':
+      return examined(task.request, task.result, task.released);
     case 'compress':
       return compressed(task.bytes);
   }
@@ -39,6 +49,23 @@ function computed(request: ComputeRequest): Computed {
     return { result: compute(request) };
   } catch (error) {
     if (error instanceof RefusedError) return { faults: error.faults };
+    throw error;
+  }
+}
+
+function examined(
+  request: ComputeRequest,
+  result: ComputeResult,
+  released: ReleasedFigure[],
+): Examined {
+  return { facts: facts(result, released), race: raced(request) };
+}
+
+function raced(request: ComputeRequest): RaceResult | null {
+  try {
+    return race(request);
+  } catch (error) {
+    if (error instanceof RefusedError) return null;
     throw error;
   }
 }

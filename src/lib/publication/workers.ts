@@ -1,4 +1,6 @@
 import type { ComputeRequest, ComputeResult } from '../econ/types.ts';
+import type { Facts, ReleasedFigure } from '../econ/facts.ts';
+import type { RaceResult } from '../econ/race.ts';
 import type { ShareImage, ShareImageInput } from '../images/shareImage.ts';
 import type { View } from '../services/view.ts';
 
@@ -9,6 +11,12 @@ export interface RenderedPage {
   body: Uint8Array;
 }
 
+/** What is computed from a release's request and result besides. */
+export interface Examined {
+  facts: Facts;
+  race: RaceResult | null;
+}
+
 /** The heavy work, kept off the serving loop: in the process a pool of threads, in tests whatever answers the same. */
 export interface Workers {
   /** Renders the page of an address with the built site; the same bytes as a request for it in that view. */
@@ -17,6 +25,12 @@ export interface Workers {
   shareImage(input: ShareImageInput): Promise<ShareImage>;
   /** The contract's computation; throws econ's `RefusedError`. */
   compute(request: ComputeRequest): Promise<ComputeResult>;
+  /** What the numbers allow a writer to say, and the forecast race; no race where the series are too short for one. */
+  examine(
+    request: ComputeRequest,
+    result: ComputeResult,
+    released: ReleasedFigure[],
+  ): Promise<Examined>;
   /** Brotli (quality 5) and gzip forms of the bytes. */
   compress(bytes: Uint8Array): Promise<{ br: Uint8Array; gzip: Uint8Array }>;
   close(): Promise<void>;

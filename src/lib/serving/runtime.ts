@@ -63,6 +63,7 @@ function noWorkers(): Workers {
     page: refuse,
     shareImage: refuse,
     compute: refuse,
+    examine: refuse,
     compress: refuse,
     close: async () => {},
   };

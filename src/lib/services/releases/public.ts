@@ -1,5 +1,6 @@
 import type { Db } from '../../../../db/connection.ts';
 import type { Assumptions, ComputeRequest, ComputeResult } from '../../econ/types.ts';
+import { mayServeInputs } from '../series/mayServeInputs.ts';
 import type { View } from '../view.ts';
 import { isVisible, publishedAt } from './visible.ts';
 
@@ -26,6 +27,8 @@ export interface PublicRelease extends ReleaseSummary {
   methodVersion: string;
   specification: { version: number; assumptions: Assumptions; reason: string; holdsFrom: string };
   vintage: { id: string; sourcePublishedAt: Date };
+  /** Whether its request, inputs and bundle are public: every licence lets us serve the input values. */
+  servesInputs: boolean;
 }
 
 export interface ReleaseFilter {
@@ -137,6 +140,7 @@ export async function getRelease(
       holdsFrom: row.holds_from,
     },
     vintage: { id: row.vintage_id, sourcePublishedAt: row.source_published_at },
+    servesInputs: await mayServeInputs(db, row.economy_code),
   };
 }
 
