@@ -72,6 +72,13 @@ export function shareInterval({ lambda, se_lambda }: ComputeResult['slope']): st
   return `${unsigned(lambda - half, 2)} to ${unsigned(lambda + half, 2)}`;
 }
 
+/** The output share with its 80% interval: "0.36 (0.30 to 0.42)". */
+export function shareWords(slope: ComputeResult['slope']): string {
+  const interval = shareInterval(slope);
+  const share = unsigned(slope.lambda, 2);
+  return interval === null ? share : `${share} (${interval})`;
+}
+
 /** Where a release's output share comes from and what it is: "Estimated from prices over all months: 0.39, 80% interval 0.35 to 0.44". */
 export function shareInUse(
   slope: Slope,

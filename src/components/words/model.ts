@@ -118,7 +118,11 @@ function outputShare(request: ComputeRequest, result: ComputeResult): Finding {
   }
   const share = unsigned(slope.lambda, 2);
   const rest = unsigned(1 - slope.lambda, 2);
-  const lead = request.slope.method === 'fixed' ? 'As the desk assumes' : 'As estimated';
+  const lead = isGapAssumption(result)
+    ? 'If the model held'
+    : request.slope.method === 'fixed'
+      ? 'As the desk assumes'
+      : 'As estimated';
   const noun = periodNoun(result.periods[0]!);
   return {
     title,
