@@ -171,8 +171,8 @@ describe('words of the assumptions', () => {
   });
 
   it('never print a p-value of zero', () => {
-    expect(pValue(1e-9)).toBe('p < 0.001');
-    expect(pValue(0.234)).toBe('p = 0.23');
+    expect(pValue(1e-9)).toBe('p\u00a0<\u00a00.001');
+    expect(pValue(0.234)).toBe('p\u00a0=\u00a00.23');
   });
 });
 

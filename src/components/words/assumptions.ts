@@ -101,7 +101,7 @@ export function timingWords(
   return 'timing not stated';
 }
 
-/** A p-value as pages print it: "p = 0.23", "p < 0.001". */
+/** A p-value as pages print it: "p = 0.23", "p < 0.001", on one line. */
 export function pValue(p: number): string {
-  return p < 0.001 ? 'p < 0.001' : `p = ${unsigned(p, p < 0.1 ? 3 : 2)}`;
+  return p < 0.001 ? 'p\u00a0<\u00a00.001' : `p\u00a0=\u00a0${unsigned(p, p < 0.1 ? 3 : 2)}`;
 }

@@ -99,7 +99,7 @@ function noResponse({ slope }: ComputeResult, nameInText: string): Finding | nul
     words: detects
       ? `Prices that ignored money would give an output share of 1. Prices in ${nameInText} respond within the period: the estimate differs from 1 by more than two standard errors.`
       : `Prices in ${nameInText} show no detectable response to money within the period: the estimate cannot be told from 1, which prices that ignore money would give.`,
-    numbers: `t = ${unsigned(t, 1)} against an output share of 1.`,
+    numbers: `t\u00a0=\u00a0${unsigned(t, 1)} against an output share of 1.`,
   };
 }
 
@@ -146,6 +146,6 @@ function calibration({ diagnostics }: ComputeResult): Finding | null {
   return {
     title: 'The expectation rule',
     words: ljung_box?.p == null ? words.replace(/, and .*$/, '.') : words,
-    numbers: `Mean surprise ${unsigned(surprise.mean, 2)}\u00a0pp, t = ${unsigned(surprise.mean_t, 1)}.${test}`,
+    numbers: `Mean surprise ${unsigned(surprise.mean, 2)}\u00a0pp, t\u00a0=\u00a0${unsigned(surprise.mean_t, 1)}.${test}`,
   };
 }
