@@ -4,6 +4,7 @@ import { record } from '../audit.ts';
 import { type ServiceContext, ServiceError } from '../context.ts';
 import { parseInput } from '../parseInput.ts';
 import { requirePermission } from '../people/permissions.ts';
+import { seriesId } from '../series/concepts.ts';
 import { transact } from '../transact.ts';
 
 /** Series an economy may have, money first; also the columns of a data file. */
@@ -48,13 +49,6 @@ const newEconomy = z.object({
 /** What describes one input series. */
 export type SeriesMetadata = z.input<typeof seriesFields>;
 export type NewEconomy = z.input<typeof newEconomy>;
-
-const SUFFIX: Record<Frequency, string> = { monthly: 'M', quarterly: 'Q', annual: 'A' };
-
-/** The id of a series: `XAL.money.M`. */
-export function seriesId(economy: string, concept: string, frequency: Frequency): string {
-  return `${economy}.${concept}.${SUFFIX[frequency]}`;
-}
 
 /** A new economy with what describes its input series; money always, prices and activity where it has them. */
 export async function createEconomy(ctx: ServiceContext, input: NewEconomy): Promise<string> {
