@@ -248,13 +248,16 @@ async function putInForce(ctx: ServiceContext, moments: Moment[]): Promise<void>
         .execute();
       await insertRows(trx, moment.at, moment.rows, ctx.build, generation);
       for (const release of moment.releases) {
-        await trx
+        const readied = await trx
           .updateTable('release')
           .set({ ready_for: moment.at })
           .where('id', '=', release.id)
           .where('state', '=', 'scheduled')
           .where('scheduled_for', '=', moment.at)
-          .execute();
+          .executeTakeFirst();
+        if (readied.numUpdatedRows === 0n) {
+          throw new Error(`${release.id} was taken off the schedule while it was drawn`);
+        }
         await trx
           .updateTable('vintage')
           .set({ public_from: sql`least(public_from, ${moment.at})` })
