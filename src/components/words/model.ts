@@ -2,7 +2,8 @@ import { unsigned } from '../../lib/charts/figures.ts';
 import { periodNoun } from '../../lib/charts/periodLabels.ts';
 import type { ComputeRequest, ComputeResult } from '../../lib/econ/types.ts';
 import { pValue, shareInterval } from './assumptions.ts';
-import { GATE_LEVEL, isGapAssumption } from '../../lib/services/releases/sentences.ts';
+import { GATE_LEVEL } from '../../lib/econ/diagnostics/gate.ts';
+import { isGapAssumption } from '../../lib/services/releases/sentences.ts';
 import { persistenceInUse } from './reading.ts';
 
 /** One thing the data say about the model: in words first, then the numbers. */

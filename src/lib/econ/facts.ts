@@ -1,8 +1,8 @@
+import { isRejected } from './diagnostics/gate.ts';
 import { PERIODS_A_YEAR, parsePeriod } from './periods.ts';
 import type { ComputeResult, Values } from './types.ts';
 
 const RANKED_YEARS = 10;
-const REJECTION_LEVEL = 0.01;
 
 /** A value and the period that proves it; log points. */
 export interface Dated {
@@ -75,7 +75,6 @@ export function facts(result: ComputeResult, history: readonly ReleasedFigure[] 
   const last = periods.length - 1;
   const lower = result.gap_lower?.[last] ?? null;
   const upper = result.gap_upper?.[last] ?? null;
-  const p = diagnostics.neutrality?.p ?? null;
   return {
     period: periods[last]!,
     surprise: factsOf(periods, surprise)!,
@@ -85,7 +84,7 @@ export function facts(result: ComputeResult, history: readonly ReleasedFigure[] 
       lower === null || upper === null
         ? null
         : { lower, upper, leaves_out_zero: lower > 0 || upper < 0 },
-    neutrality_rejected: p === null ? null : p < REJECTION_LEVEL,
+    neutrality_rejected: isRejected(diagnostics.neutrality),
     revised: revised(result, history),
   };
 }

@@ -1,6 +1,6 @@
+import { isRejected } from './diagnostics/gate.ts';
 import type { ComputeRequest, NeutralityResult, SlopeResult } from './types.ts';
 
-const REJECTION_LEVEL = 0.01;
 const NO_RESPONSE_T = 2;
 
 /** Sentences a reader must see beside the numbers, in the contract's order. */
@@ -20,7 +20,7 @@ export function warningsOf(
       `The structural slope has ${slope.roots.length} solutions; the smallest is used, and all are listed.`,
     );
   }
-  if (neutrality !== null && neutrality.p !== null && neutrality.p < REJECTION_LEVEL) {
+  if (isRejected(neutrality)) {
     warnings.push(
       'Prices do not behave as the model requires: neutrality is rejected at 1%, so the gap is an assumption, not an estimate.',
     );

@@ -1,5 +1,4 @@
 import { z } from 'zod';
-import type { Frequency } from '../../econ/types.ts';
 import { record } from '../audit.ts';
 import { type ServiceContext, ServiceError } from '../context.ts';
 import { parseInput } from '../parseInput.ts';

@@ -1,14 +1,11 @@
 import { periodLabel, periodNoun } from '../../charts/periodLabels.ts';
+import { isRejected } from '../../econ/diagnostics/gate.ts';
 import { addPeriods } from '../../econ/periods.ts';
 import type { Assumptions, ComputeResult } from '../../econ/types.ts';
 
-/** Significance at which the model's own test closes the gate on the gap. */
-export const GATE_LEVEL = 0.01;
-
 /** Whether the neutrality test rejects, so that the gap is an assumption and not an estimate. */
 export function isGapAssumption(result: Pick<ComputeResult, 'diagnostics'>): boolean {
-  const p = result.diagnostics.neutrality?.p ?? null;
-  return p !== null && p < GATE_LEVEL;
+  return isRejected(result.diagnostics.neutrality) === true;
 }
 
 /** Whether the assumptions have persistence: without it what is shown is not a gap. */

@@ -1,3 +1,5 @@
+import { hasPersistence } from '../releases/sentences.ts';
+import { isRejected } from '../../econ/diagnostics/gate.ts';
 import type { ComputeRequest, ComputeResult, Frequency, Values } from '../../econ/types.ts';
 
 /** The series an economy's desk loads; their values are a file's own. */
@@ -96,8 +98,6 @@ export interface ReleaseValue {
   upper: number | null;
 }
 
-const REJECTION_LEVEL = 0.01;
-
 /**
  * The values a release publishes, one for each indicator and period of the result, indicators in a fixed order.
  * Where neutrality is rejected at 1% the gap keeps its value and loses its band; without persistence it is the
@@ -105,10 +105,8 @@ const REJECTION_LEVEL = 0.01;
  */
 export function valuesOf(result: ComputeResult, request: ComputeRequest): ReleaseValue[] {
   const { inflation } = result;
-  const persistence = request.gap?.persistence ?? 'none';
-  const gap = persistence === 'none' || persistence === 0 ? 'output_effect' : 'implied_gap';
-  const p = result.diagnostics.neutrality?.p ?? null;
-  const isAssumption = p !== null && p < REJECTION_LEVEL;
+  const gap = hasPersistence(request) ? 'implied_gap' : 'output_effect';
+  const isAssumption = isRejected(result.diagnostics.neutrality) === true;
   const columns: [string, Values | null, (Values | null)?, (Values | null)?][] = [
     ['money_growth', result.growth],
     ['expected_money_growth', result.expected_growth],
