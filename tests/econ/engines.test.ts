@@ -1,11 +1,10 @@
 import { readdirSync, readFileSync } from 'node:fs';
-import { fileURLToPath } from 'node:url';
 import { Worker } from 'node:worker_threads';
-import { build, type Rollup } from 'vite';
 import { beforeAll, describe, expect, test } from 'vitest';
 import { compute } from '../../src/lib/econ/compute.ts';
 import type { ComputeRequest } from '../../src/lib/econ/types.ts';
 import { startBrowser } from '../setup/browser.ts';
+import { econScript } from '../setup/econScript.ts';
 
 const folder = new URL('../reference/cases/', import.meta.url);
 const requests = readdirSync(folder)
@@ -13,28 +12,11 @@ const requests = readdirSync(folder)
   .filter((one) => !('errors' in one.expected))
   .map((one) => one.request as ComputeRequest);
 
-/** The computation as a browser gets it: one script that defines `econ.compute`. */
-async function bundle(): Promise<string> {
-  const outputs = (await build({
-    configFile: false,
-    logLevel: 'error',
-    build: {
-      write: false,
-      lib: {
-        entry: fileURLToPath(new URL('../../src/lib/econ/compute.ts', import.meta.url)),
-        formats: ['iife'],
-        name: 'econ',
-      },
-    },
-  })) as Rollup.RollupOutput[];
-  return outputs[0]!.output[0].code;
-}
-
 describe('the same requests give the same bytes', { timeout: 120_000 }, () => {
   const inNode = requests.map((request) => JSON.stringify(compute(request)));
   let script = '';
   beforeAll(async () => {
-    script = await bundle();
+    script = await econScript();
   }, 120_000);
 
   test('in a worker thread', async () => {
