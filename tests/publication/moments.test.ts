@@ -127,6 +127,43 @@ describe('a coming moment', () => {
   });
 });
 
+describe('an announced date', () => {
+  const announce = (period: string) =>
+    stage.ctx.db
+      .insertInto('announcement')
+      .values({
+        economy_code: 'XTA',
+        period,
+        announced_at: stage.ctx.now(),
+        due_at: new Date('2031-12-01T08:00:00Z'),
+        announced_by: 'reviewer',
+      })
+      .execute();
+  const rowsOf = async (address: string) =>
+    stage.ctx.db.selectFrom('published').where('address', '=', address).selectAll().execute();
+
+  it('brings the economy its page three seconds after it is drawn, once', async () => {
+    await announce('2031-11');
+    await bringUpToDate(stage.ctx);
+    const one = await process();
+    expect(await one.text('/economies/XTA/')).toBeNull();
+    at('2031-10-01T07:00:03Z');
+    expect(await one.text('/economies/XTA/')).toBe('/economies/XTA/: ');
+    await bringUpToDate(stage.ctx);
+    expect(await rowsOf('/economies/XTA/')).toHaveLength(1);
+  });
+
+  it('is in the newest explainer too, and in that of the month before a release', async () => {
+    await stage.schedule('2031-08', '2031-10-01T08:00:00Z');
+    await stage.schedule('2031-09', '2031-10-01T09:00:00Z');
+    await bringUpToDate(stage.ctx);
+    const seconds = (await rowsOf('/releases/XTA/2031-08/')).map((row) =>
+      row.visible_from.toISOString().slice(11, 16),
+    );
+    expect(seconds).toEqual(['08:00', '09:00']);
+  });
+});
+
 describe('a vintage', () => {
   it('is public from the second of the first release that freezes it, and not if that is taken out', async () => {
     const publicFrom = async () =>

@@ -22,7 +22,7 @@ export interface Stage {
 
 /** A runtime on an empty database; it computes as the product does and draws pages that hold their address only. */
 export async function seedStage(): Promise<Stage> {
-  const database = await testDatabase('migrated');
+  const database = await testDatabase();
   const dataDir = await mkdtemp(join(tmpdir(), 'slackwater-seed-'));
   const env = readEnv({
     SLACKWATER_MODE: 'demo',

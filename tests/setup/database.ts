@@ -2,7 +2,9 @@ import { randomBytes } from 'node:crypto';
 import pg from 'pg';
 import { inject } from 'vitest';
 import { connect, type Db } from '../../db/connection.ts';
-import { templates, type TemplateName } from './templates.ts';
+import { migrate } from '../../db/migrate.ts';
+
+const TEMPLATE = 'migrated';
 
 /** A database of a test file's own. */
 export interface TestDatabase {
@@ -13,13 +15,13 @@ export interface TestDatabase {
 }
 
 /**
- * A new database, cloned from a template in some 50 ms: `migrated` is empty, `seeded` has the small
- * scenario. Make one in `beforeAll`, drop it in `afterAll`.
+ * A new, migrated and otherwise empty database, cloned from a template in some 50 ms. Make one in `beforeAll`, drop
+ * it in `afterAll`.
  */
-export async function testDatabase(template: TemplateName = 'migrated'): Promise<TestDatabase> {
-  await ensureTemplate(template);
+export async function testDatabase(): Promise<TestDatabase> {
+  await ensureTemplate();
   const name = `test_${randomBytes(6).toString('hex')}`;
-  await administer((client) => client.query(`create database ${name} template ${template}`));
+  await administer((client) => client.query(`create database ${name} template ${TEMPLATE}`));
   const url = urlOf(name);
   const db = connect(url);
   return {
@@ -32,24 +34,24 @@ export async function testDatabase(template: TemplateName = 'migrated'): Promise
   };
 }
 
-/** Makes a template the first time any test file of the run asks for it; the others wait. */
-async function ensureTemplate(name: TemplateName): Promise<void> {
-  const { base, fill } = templates[name];
-  if (base) await ensureTemplate(base);
+/** Makes the template the first time any test file of the run asks for it; the others wait. */
+async function ensureTemplate(): Promise<void> {
   await administer(async (client) => {
-    await client.query(`select pg_advisory_lock(hashtext($1))`, [name]);
-    const { rowCount } = await client.query('select from pg_database where datname = $1', [name]);
+    await client.query(`select pg_advisory_lock(hashtext($1))`, [TEMPLATE]);
+    const { rowCount } = await client.query('select from pg_database where datname = $1', [
+      TEMPLATE,
+    ]);
     if (rowCount !== 0) return;
-    const unfinished = `${name}_unfinished`;
+    const unfinished = `${TEMPLATE}_unfinished`;
     await client.query(`drop database if exists ${unfinished} with (force)`);
-    await client.query(`create database ${unfinished} template ${base ?? 'template0'}`);
+    await client.query(`create database ${unfinished} template template0`);
     const db = connect(urlOf(unfinished));
     try {
-      await fill(db, urlOf(unfinished));
+      await migrate(db);
     } finally {
       await db.destroy();
     }
-    await client.query(`alter database ${unfinished} rename to ${name}`);
+    await client.query(`alter database ${unfinished} rename to ${TEMPLATE}`);
   });
 }
 

@@ -1,9 +1,12 @@
 import { type Transaction, sql } from 'kysely';
 import type { Db } from '../../../db/connection.ts';
+import { changedEconomies } from '../../../db/queries/changedEconomies.ts';
 import { PUBLICATION_LOCK } from '../../../db/queries/publicationLock.ts';
 import { currentHashes, nextGeneration } from '../../../db/queries/published.ts';
 import type { Database } from '../../../db/tables.ts';
 import type { InTransaction, ServiceContext } from '../services/context.ts';
+import { listEconomies } from '../services/economies/public.ts';
+import { listReleases } from '../services/releases/public.ts';
 import type { View } from '../services/view.ts';
 import { type Kept, keep, recordArtefacts } from './artefacts.ts';
 import { type Planned, SITE_PAGES, economyPage, releasePages } from './plan.ts';
@@ -185,6 +188,7 @@ async function drawMoment(ctx: ServiceContext, at: Date, releases: Coming[]): Pr
   for (const release of releases) {
     pages.add(economyPage(release.economyCode));
     for (const address of releasePages(release)) pages.add(address);
+    for (const address of await pagesBefore(ctx, view, release)) pages.add(address);
     files.push(...(await filesOf(ctx, view, release)));
   }
   const rows = await Promise.all([...pages].map((address) => drawPage(ctx, address, view)));
@@ -199,16 +203,34 @@ async function drawMoment(ctx: ServiceContext, at: Date, releases: Coming[]): Pr
   return rows;
 }
 
-/** The site's and the economies' pages as they are now, where that differs from what is in force. */
+/** The pages of the month before, which lead on to this one. */
+async function pagesBefore(ctx: ServiceContext, view: View, release: Planned): Promise<string[]> {
+  const all = await listReleases(ctx.db, view, { economy: release.economyCode });
+  const [before] = all
+    .filter(({ period }) => period < release.period)
+    .toSorted((a, b) => (a.period < b.period ? 1 : -1));
+  return before ? releasePages(before) : [];
+}
+
+/**
+ * What changed outside of any moment, drawn as it is now: announced dates and specifications, in the pages of their
+ * economies, in the newest explainer, which names the next date, and in the pages of the site.
+ */
 async function drawImmediate(ctx: ServiceContext): Promise<Row[]> {
   const now = ctx.now();
-  const economies = await ctx.db
-    .selectFrom('announcement')
-    .select('economy_code')
-    .distinct()
-    .where('announced_at', '<=', now)
-    .execute();
-  const pages = [...SITE_PAGES, ...economies.map((row) => economyPage(row.economy_code))];
+  const changed = await changedEconomies(ctx.db, now);
+  const isFirst = !(await currentHashes(ctx.db, ['/'], now)).has('/');
+  if (changed.length === 0 && !isFirst) return [];
+  const economies = await listEconomies(ctx.db, { at: now });
+  const pages = [
+    ...SITE_PAGES,
+    ...economies
+      .filter(({ economy }) => changed.includes(economy.code))
+      .flatMap(({ economy, latest }) => [
+        economyPage(economy.code),
+        ...(latest ? releasePages(latest) : []),
+      ]),
+  ];
   const rows = await Promise.all(pages.map((address) => drawPage(ctx, address, { at: now })));
   const inForce = await currentHashes(ctx.db, pages, now);
   return rows.filter((row) => inForce.get(row.address) !== row.kept.hash);

@@ -1,9 +1,13 @@
+import { bringUpToDate } from '../../publication/moments.ts';
 import { record } from '../audit.ts';
 import { type ServiceContext, ServiceError } from '../context.ts';
 import { requirePermission } from '../people/permissions.ts';
 import { transact } from '../transact.ts';
 
-/** Approves a specification for use in releases: a reviewer who did not write it. A second approval changes nothing. */
+/**
+ * Approves a specification for use in releases, and draws the pages that name the one in force: a reviewer who did
+ * not write it. A second approval changes nothing.
+ */
 export async function approveSpecification(ctx: ServiceContext, id: string): Promise<void> {
   const actor = requirePermission(ctx.actor, 'specifications.approve');
   await transact(ctx, async (trx) => {
@@ -29,4 +33,5 @@ export async function approveSpecification(ctx: ServiceContext, id: string): Pro
       detail: { id },
     });
   });
+  await bringUpToDate(ctx);
 }
