@@ -1,5 +1,5 @@
 import { formatPeriod, parsePeriod, periodDifference } from '../src/lib/econ/periods.ts';
-import type { DemoSlot } from './economies.ts';
+import type { DemoSlot } from './economy.ts';
 import { HISTORY_MONTHS } from './generate.ts';
 
 const MINUTE = 60_000;

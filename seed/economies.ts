@@ -1,115 +1,5 @@
-import type { Assumptions, Timing } from '../src/lib/econ/types.ts';
-
-interface Money {
-  /** μ: mean money growth, log points a month. */
-  mean: number;
-  /** φ: how growth leans on its own past, nearest month first. */
-  phi: number[];
-  /** σ: standard deviation of surprises. */
-  sigma: number;
-  /** g_V and the standard deviation of ν. */
-  velocityGrowth: number;
-  sdVelocity: number;
-  /** g_y: trend growth of output. */
-  outputGrowth: number;
-}
-
-/** An economy made from the model itself: what the product finds in it can be held against the truth. */
-export interface ModelTruth extends Money {
-  kind: 'model';
-  /** λ: share of a nominal surprise that goes into output within the month. */
-  lambda: number;
-  /** ρ: how much of an output gap is left a month later. */
-  rho: number;
-  /** Standard deviation of ε, output's own surprises. */
-  sdOutput: number;
-  /** A break: what holds from a position on. */
-  later?: { from: number; sigma: number; lambda: number };
-}
-
-/** An economy that rejects the model: its prices move a fixed part of the way to where money would have them. */
-export interface StickyTruth extends Money {
-  kind: 'sticky';
-  priceDrift: number;
-  adjustment: number;
-  sdPrices: number;
-}
-
-/** How one series of the demo is described, and from which level it starts. */
-export interface DemoSeries {
-  title: string;
-  unit: string;
-  timing: Timing | null;
-  adjustment: 'adjusted' | 'unadjusted';
-  source: string;
-}
-
-/** When an economy's figures come out: days from the day of seeding for the newest month, and the hour (UTC). */
-export interface DemoSlot {
-  day: number;
-  hour: number;
-  minute: number;
-  /** The newest month is due this many minutes after seeding instead. */
-  minutesAfterSeeding?: number;
-}
-
-/** One invented economy: what is true of it, what the desk assumes and how it is described. */
-export interface DemoEconomy {
-  code: string;
-  name: string;
-  /** The name inside a sentence, with its article where it has one. */
-  nameInText: string;
-  currency: string;
-  /** Of its random numbers; chosen among two dozen so that gaps stay in range and newest months differ. */
-  seed: number;
-  truth: ModelTruth | StickyTruth;
-  /** Money in the first month, in the unit of the series. */
-  firstMoney: number;
-  /** Prices carry another base year from this position's vintage on. */
-  pricesRebasedFrom?: number;
-  series: { money: DemoSeries; prices: DemoSeries; activity: DemoSeries };
-  assumptions: Assumptions;
-  /** Why the desk chose these assumptions. */
-  reason: string;
-  slot: DemoSlot;
-}
-
-interface Names {
-  demonym: string;
-  unit: string;
-  moneyTiming?: Timing;
-}
-
-/** The three series that every demo economy has, all invented and saying so. */
-function threeSeries({ demonym, unit, moneyTiming = 'average' }: Names): DemoEconomy['series'] {
-  const average = { timing: 'average', adjustment: 'adjusted' } as const;
-  return {
-    money: {
-      title: 'Broad money',
-      unit,
-      timing: moneyTiming,
-      adjustment: 'adjusted',
-      source: `${demonym} monetary survey (invented)`,
-    },
-    prices: {
-      title: 'Consumer prices',
-      unit: 'index points',
-      ...average,
-      source: `${demonym} consumer price index (invented)`,
-    },
-    activity: {
-      title: 'Activity',
-      unit: 'index points',
-      ...average,
-      source: `${demonym} monthly activity index (invented)`,
-    },
-  };
-}
-
-/** The output share as the slope b the computation takes: λ = b/(1+b). */
-function slopeOf(lambda: number): number {
-  return lambda / (1 - lambda);
-}
+import { type DemoEconomy, threeSeries } from './economy.ts';
+import { specifications } from './specifications.ts';
 
 const aldermark: DemoEconomy = {
   code: 'XAL',
@@ -132,19 +22,7 @@ const aldermark: DemoEconomy = {
   firstMoney: 410,
   pricesRebasedFrom: 358,
   series: threeSeries({ demonym: 'Aldermark', unit: 'billion alders' }),
-  assumptions: {
-    expectation: {
-      rule: 'autoregression',
-      order: 1,
-      seasonal: 'none',
-      window: { kind: 'expanding', length: 120 },
-    },
-    slope: { method: 'prices' },
-    gap: { persistence: 0.93 },
-    confidence: 0.8,
-  },
-  reason:
-    'First version. One lag describes money growth here; the output share is estimated from prices over all months; persistence is set at 0.93.',
+  specifications: specifications.XAL,
   slot: { day: -9, hour: 8, minute: 0 },
 };
 
@@ -168,19 +46,7 @@ const brannochIsles: DemoEconomy = {
   },
   firstMoney: 64,
   series: threeSeries({ demonym: 'Brannoch', unit: 'billion branns', moneyTiming: 'end' }),
-  assumptions: {
-    expectation: {
-      rule: 'autoregression',
-      order: 1,
-      seasonal: 'none',
-      window: { kind: 'rolling', length: 180 },
-    },
-    slope: { method: 'fixed', b: slopeOf(0.6), se_lambda: 0.06 },
-    gap: { persistence: 0.95 },
-    confidence: 0.8,
-  },
-  reason:
-    'First version. Money is an end-of-month figure and prices are averages, so an output share estimated from prices would be too large: 0.60 with a standard error of 0.06 is assumed instead. The expectation learns from the last fifteen years; persistence is set at 0.95.',
+  specifications: specifications.XBR,
   slot: { day: -6, hour: 9, minute: 30 },
 };
 
@@ -205,19 +71,7 @@ const costaLirra: DemoEconomy = {
   },
   firstMoney: 88,
   series: threeSeries({ demonym: 'Costa Lirra', unit: 'billion lirrans' }),
-  assumptions: {
-    expectation: {
-      rule: 'autoregression',
-      order: 2,
-      seasonal: 'none',
-      window: { kind: 'rolling', length: 120 },
-    },
-    slope: { method: 'prices', window: { length: 120 } },
-    gap: { persistence: 0.9 },
-    confidence: 0.8,
-  },
-  reason:
-    'First version. Money has been less steady for some years, and the output share with it: both the expectation and the output share look back ten years and no further. Persistence is set at 0.90.',
+  specifications: specifications.XCL,
   slot: { day: -3, hour: 10, minute: 0 },
 };
 
@@ -241,19 +95,7 @@ const dunmere: DemoEconomy = {
   },
   firstMoney: 24,
   series: threeSeries({ demonym: 'Dunmere', unit: 'billion dunars' }),
-  assumptions: {
-    expectation: {
-      rule: 'autoregression',
-      order: 2,
-      seasonal: 'none',
-      window: { kind: 'expanding', length: 120 },
-    },
-    slope: { method: 'fixed', b: slopeOf(0.08), se_lambda: 0.03 },
-    gap: { persistence: 0.85 },
-    confidence: 0.8,
-  },
-  reason:
-    'First version. Where prices rise this fast, surprises reach them almost at once: an output share of 0.08 with a standard error of 0.03 is assumed, and a persistence of 0.85.',
+  specifications: specifications.XDU,
   slot: { day: 10, hour: 7, minute: 0 },
 };
 
@@ -277,20 +119,41 @@ const estavel: DemoEconomy = {
   },
   firstMoney: 210,
   series: threeSeries({ demonym: 'Estavel', unit: 'billion estaves' }),
-  assumptions: {
-    expectation: {
-      rule: 'autoregression',
-      order: 1,
-      seasonal: 'none',
-      window: { kind: 'expanding', length: 120 },
-    },
-    slope: { method: 'prices' },
-    gap: { persistence: 0.9 },
-    confidence: 0.8,
-  },
-  reason:
-    'First version. The same rule as for Aldermark; prices hardly answer to money within the month, and the neutrality test says so on every release. Persistence is set at 0.90.',
+  specifications: specifications.XES,
   slot: { day: 0, hour: 9, minute: 0, minutesAfterSeeding: 15 },
+};
+
+const farrowland: DemoEconomy = {
+  code: 'XFA',
+  name: 'Farrowland',
+  nameInText: 'Farrowland',
+  currency: 'farrow',
+  seed: 17,
+  truth: {
+    kind: 'model',
+    mean: 0.75,
+    phi: [0.35],
+    sigma: 0.4,
+    lambda: 0.222,
+    rho: 0.93,
+    outputGrowth: 0.22,
+    velocityGrowth: -0.03,
+    sdVelocity: 0.18,
+    sdOutput: 0.2,
+    seasons: {
+      money: [-1.6, -0.4, 0.3, 0.1, -0.2, 0.4, 0.3, -0.5, -0.1, 0, 0.3, 1.4],
+      prices: [-0.45, 0.05, 0.25, 0.2, 0.1, 0, -0.3, -0.05, 0.2, 0.1, 0, -0.1],
+      activity: [-5, 1.5, 3.5, 0, 0.5, 0.5, -2, -4, 5, 1, -0.5, -0.5],
+    },
+  },
+  firstMoney: 36,
+  series: threeSeries({
+    demonym: 'Farrowland',
+    unit: 'billion farrows',
+    adjustment: 'unadjusted',
+  }),
+  specifications: specifications.XFA,
+  slot: { day: -1, hour: 8, minute: 30 },
 };
 
 /** The economies of the demo, in the order of their codes. */
@@ -300,4 +163,5 @@ export const demoEconomies: readonly DemoEconomy[] = [
   costaLirra,
   dunmere,
   estavel,
+  farrowland,
 ];

@@ -1,4 +1,4 @@
-import type { DemoEconomy, ModelTruth, StickyTruth } from './economies.ts';
+import type { DemoEconomy, ModelTruth, StickyTruth } from './economy.ts';
 import { type RandomStream, randomStream } from './random.ts';
 
 /** Months of every demo history: thirty years. */
@@ -23,7 +23,7 @@ export interface TrueHistory {
   firstError: number[];
 }
 
-/** The generator of the demo: 360 months that depend on the economy's truth and seed alone. */
+/** The generator of the demo: 360 months that depend on the economy's truth and seed alone, without seasons. */
 export function generate(economy: DemoEconomy): TrueHistory {
   const stream = randomStream(economy.seed);
   const history =

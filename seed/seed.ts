@@ -5,8 +5,9 @@ import type { Actor, ServiceContext } from '../src/lib/services/context.ts';
 import { createKey } from '../src/lib/services/keys/create.ts';
 import { SCOPES } from '../src/lib/services/keys/scopes.ts';
 import type { DemoAccounts } from './accounts.ts';
-import { newestMonth, releaseTimes } from './calendar.ts';
-import { type DemoEconomy, demoEconomies } from './economies.ts';
+import { firstMonth, newestMonth, releaseTimes } from './calendar.ts';
+import { demoEconomies } from './economies.ts';
+import type { DemoEconomy } from './economy.ts';
 import { createPeople } from './people.ts';
 import { type Step, economySteps } from './steps.ts';
 import { demoData } from './vintages.ts';
@@ -54,7 +55,7 @@ export async function seedDemo(runtime: Runtime, options: SeedOptions): Promise<
   const steps = economies.flatMap((economy, i) =>
     economySteps({
       economy,
-      data: demoData(economy),
+      data: demoData(economy, firstMonth(options.now)),
       editor: i % 2 === 0 ? cast.editorOne : cast.editorTwo,
       reviewer: cast.reviewer,
       as,

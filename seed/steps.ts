@@ -16,7 +16,7 @@ import { approveSpecification } from '../src/lib/services/specifications/approve
 import { draftSpecification } from '../src/lib/services/specifications/draft.ts';
 import { acceptVintage } from '../src/lib/services/vintages/accept.ts';
 import { firstMonth, releaseTimes } from './calendar.ts';
-import type { DemoEconomy, DemoSeries } from './economies.ts';
+import type { DemoEconomy, DemoSeries, DemoSpecification } from './economy.ts';
 import { releaseWords } from './text.ts';
 import { type DemoData, vintageCsv } from './vintages.ts';
 
@@ -42,24 +42,46 @@ export interface Assignment {
   months: readonly string[];
 }
 
+/** A version of the specification at the desk: from when it holds and, once drafted, what it is called by. */
+interface Version extends DemoSpecification {
+  holdsFrom: string;
+  id: string;
+}
+
 const HOUR = 3_600_000;
-const ANNOUNCED_AHEAD = 45 * 24 * HOUR;
+const DAY = 24 * HOUR;
+const ANNOUNCED_AHEAD = 45 * DAY;
+
+/** How long before the data of its first month a later version is drafted, and how soon after that approved. */
+const VERSION_AHEAD = 4 * DAY;
+const VERSION_READ_WITHIN = DAY;
+
 const CONTACT = 'Slackwater desk, desk@example.org';
 const LICENCE = 'CC BY 4.0';
 
 /** What the desk did for an economy up to the time of seeding, each step through the service a person would use. */
 export function economySteps(assignment: Assignment): Step[] {
-  const specification = { id: '' };
+  const { economy, months, now } = assignment;
+  const versions = economy.specifications.map((specification) => ({
+    ...specification,
+    holdsFrom: months.slice(-(specification.newestMonths ?? months.length))[0]!,
+    id: '',
+  }));
   const steps = [
-    ...foundingSteps(assignment, specification),
+    foundingStep(assignment),
+    ...versions.flatMap((version, i) => versionSteps(assignment, version, i === 0)),
     ...announcementSteps(assignment),
-    ...assignment.months.flatMap((period) => releaseSteps(assignment, specification, period)),
+    ...months.flatMap((period) => releaseSteps(assignment, inForce(versions, period), period)),
   ];
-  return steps.filter((step) => step.at <= assignment.now);
+  return steps.filter((step) => step.at <= now);
 }
 
-function foundingSteps(assignment: Assignment, specification: { id: string }): Step[] {
-  const { economy, editor, reviewer, as, start, months } = assignment;
+/** The newest version that holds for a month; the first one holds for all. */
+function inForce(versions: Version[], period: string): Version {
+  return versions.findLast(({ holdsFrom }) => periodDifference(holdsFrom, period) >= 0)!;
+}
+
+function foundingStep({ economy, editor, as, start }: Assignment): Step {
   const { code, name, nameInText, currency } = economy;
   const { money, prices, activity } = economy.series;
   const series = {
@@ -67,31 +89,38 @@ function foundingSteps(assignment: Assignment, specification: { id: string }): S
     prices: described(prices),
     activity: described(activity),
   };
+  return {
+    at: new Date(start.getTime() + HOUR),
+    async work() {
+      await createEconomy(as(editor), {
+        code,
+        name,
+        nameInText,
+        currency,
+        frequency: 'monthly',
+        contact: CONTACT,
+        series,
+      });
+    },
+  };
+}
+
+function versionSteps(assignment: Assignment, version: Version, isFirst: boolean): Step[] {
+  const { economy, editor, reviewer, as, start, now } = assignment;
+  const { reason, holdsFrom, assumptions } = version;
+  const firstData = releaseTimes(now, economy.slot, holdsFrom).loaded.getTime();
+  const drafted = isFirst ? start.getTime() + 2 * HOUR : firstData - VERSION_AHEAD;
   return [
     {
-      at: new Date(start.getTime() + HOUR),
+      at: new Date(drafted),
       async work() {
-        await createEconomy(as(editor), {
-          code,
-          name,
-          nameInText,
-          currency,
-          frequency: 'monthly',
-          contact: CONTACT,
-          series,
-        });
-        const drafted = await draftSpecification(as(editor), {
-          economy: code,
-          reason: economy.reason,
-          holdsFrom: months[0]!,
-          assumptions: economy.assumptions,
-        });
-        specification.id = drafted.id;
+        const specification = { economy: economy.code, reason, holdsFrom, assumptions };
+        version.id = (await draftSpecification(as(editor), specification)).id;
       },
     },
     {
-      at: new Date(start.getTime() + 3 * HOUR),
-      work: () => approveSpecification(as(reviewer), specification.id),
+      at: new Date(drafted + (isFirst ? HOUR : VERSION_READ_WITHIN)),
+      work: () => approveSpecification(as(reviewer), version.id),
     },
   ];
 }
@@ -112,18 +141,13 @@ function described(series: DemoSeries) {
   return { ...series, licence: LICENCE, serveValues: true };
 }
 
-function releaseSteps(
-  assignment: Assignment,
-  specification: { id: string },
-  period: string,
-): Step[] {
+function releaseSteps(assignment: Assignment, version: Version, period: string): Step[] {
   const { economy, editor, reviewer, as } = assignment;
   const times = releaseTimes(assignment.now, economy.slot, period);
   let vintageId: string;
   let id: string;
   let result: ComputeResult;
-  const version = async (person: SignedIn) =>
-    (await getDeskRelease(as(person), id)).release.version;
+  const seenBy = async (person: SignedIn) => (await getDeskRelease(as(person), id)).release.version;
   return [
     {
       at: times.loaded,
@@ -139,7 +163,7 @@ function releaseSteps(
           economy: economy.code,
           period,
           vintageId,
-          specificationId: specification.id,
+          specificationId: version.id,
         });
         result = await computeRelease(as(editor), id);
       },
@@ -147,16 +171,17 @@ function releaseSteps(
     {
       at: times.written,
       async work() {
-        const { code, nameInText, assumptions } = economy;
+        const { code, nameInText } = economy;
+        const { assumptions } = version;
         const words = releaseWords({ code, nameInText, period, result, assumptions });
-        await writeRelease(as(editor), { id, version: await version(editor), ...words });
+        await writeRelease(as(editor), { id, version: await seenBy(editor), ...words });
       },
     },
     { at: times.submitted, work: () => submitRelease(as(editor), id) },
     {
       at: times.approved,
       progress: `${economy.name}, ${periodLabel(period)}`,
-      work: async () => approveRelease(as(reviewer), { id, version: await version(reviewer) }),
+      work: async () => approveRelease(as(reviewer), { id, version: await seenBy(reviewer) }),
     },
     { at: times.scheduled, work: () => scheduleRelease(as(reviewer), { id, at: times.due }) },
   ];

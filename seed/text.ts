@@ -40,7 +40,7 @@ export interface ReleaseToWrite {
   nameInText: string;
   period: string;
   result: ComputeResult;
-  assumptions: Pick<Assumptions, 'gap'>;
+  assumptions: Pick<Assumptions, 'gap' | 'expectation'>;
 }
 
 interface Context extends ReleaseToWrite {
@@ -108,17 +108,23 @@ function headline({ code, period, nameInText, month, reading }: Context): string
   return pick(key, forms);
 }
 
-function growthSentence({ code, period, month, previousMonth, reading }: Context): string {
+function growthSentence(context: Context): string {
+  const { code, period, month, previousMonth, assumptions, reading } = context;
   const { growth, expected } = reading;
-  const moved = movement('Broad money', growth);
-  const was = printsBelowZero(expected)
-    ? `a fall of ${perCent(growthPercent(expected), 2)} was expected`
-    : `growth of ${perCent(growthPercent(expected), 2)} was expected`;
+  const hasSeasons = assumptions.expectation.seasonal === 'dummies';
+  const money = hasSeasons ? 'broad money, not seasonally adjusted,' : 'broad money';
+  const moved = movement(atStart(money), growth);
+  const was = `${expectation(expected)} was expected${hasSeasons ? ' at this time of year' : ''}`;
   return pick(`${code} ${period} growth`, [
     `${moved} on the month; ${was}.`,
     `${moved} in ${month}, where ${was}.`,
-    `${movement(`From ${previousMonth} to ${month} broad money`, growth)}; ${was}.`,
+    `${movement(`From ${previousMonth} to ${month} ${money}`, growth)}; ${was}.`,
   ]);
+}
+
+function expectation(growth: number): string {
+  if (printsZero(growth)) return 'no change';
+  return `${growth < 0 ? 'a fall' : 'growth'} of ${perCent(growthPercent(growth), 2)}`;
 }
 
 /** "Broad money rose 1.15 per cent", or fell, or did not change, judged by the figure that is printed. */

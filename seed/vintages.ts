@@ -1,7 +1,8 @@
 import exp from '@stdlib/math-base-special-exp';
 import { addPeriods } from '../src/lib/econ/periods.ts';
-import type { DemoEconomy } from './economies.ts';
+import type { DemoEconomy } from './economy.ts';
 import { type TrueHistory, generate } from './generate.ts';
+import { withSeasons } from './seasons.ts';
 
 /** What is left of a first figure's error a month later; after that the figure is right. */
 const ERROR_LEFT = 0.4;
@@ -25,13 +26,17 @@ export interface DemoData {
   vintage(position: number): DemoVintage;
 }
 
-/** The data of an economy. Values depend on its seed and the position alone, never on a date. */
-export function demoData(economy: DemoEconomy): DemoData {
+/**
+ * The data of an economy whose first month is `start`. Values depend on its seed and the position alone, never on a
+ * date; but seasons follow the calendar, so where figures are not adjusted `start` decides which month has which.
+ */
+export function demoData(economy: DemoEconomy, start: string): DemoData {
   const truth = generate(economy);
-  const money = truth.money.map((value) => value - truth.money[0]!);
-  const prices = indexed(truth.prices, FIRST_BASE);
-  const rebased = indexed(truth.prices, SECOND_BASE);
-  const activity = indexed(truth.activity, FIRST_BASE);
+  const levels = withSeasons(economy.truth, truth, start);
+  const money = levels.money.map((value) => value - levels.money[0]!);
+  const prices = indexed(levels.prices, FIRST_BASE);
+  const rebased = indexed(levels.prices, SECOND_BASE);
+  const activity = indexed(levels.activity, FIRST_BASE);
   return {
     truth,
     vintage(position) {

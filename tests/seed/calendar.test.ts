@@ -18,11 +18,12 @@ describe('the calendar of the demo', () => {
     expect(newestMonth(new Date('2028-01-24T12:00:00Z'))).toBe('2027-11');
   });
 
-  test('has three economies out, one due in fifteen minutes and one ten days on', () => {
+  test('has four economies out, one due in fifteen minutes and one ten days on', () => {
     expect(due('XAL', '2031-08').toISOString()).toBe('2031-09-22T08:00:00.000Z');
     expect(due('XBR', '2031-08').toISOString()).toBe('2031-09-25T09:30:00.000Z');
     // The 28th is a Sunday.
     expect(due('XCL', '2031-08').toISOString()).toBe('2031-09-26T10:00:00.000Z');
+    expect(due('XFA', '2031-08').toISOString()).toBe('2031-09-30T08:30:00.000Z');
     expect(due('XES', '2031-08').toISOString()).toBe('2031-10-01T13:35:00.000Z');
     expect(due('XDU', '2031-08').toISOString()).toBe('2031-10-11T07:00:00.000Z');
   });

@@ -1,5 +1,6 @@
 import { describe, expect, test } from 'vitest';
-import { type DemoEconomy, demoEconomies } from '../../seed/economies.ts';
+import { demoEconomies } from '../../seed/economies.ts';
+import type { DemoEconomy } from '../../seed/economy.ts';
 import { generate, HISTORY_MONTHS, regimeAt } from '../../seed/generate.ts';
 import { leastSquares } from './leastSquares.ts';
 

@@ -20,7 +20,7 @@ beforeAll(async () => {
   accounts = await seedDemo(stage.runtime, {
     now: NOW,
     economies: ['XAL', 'XDU', 'XES'],
-    months: 2,
+    months: 3,
     onProgress,
   });
 });
@@ -48,9 +48,12 @@ describe('the seeded demo', () => {
 
   test('has the newest month out where it is due, and every month before', async () => {
     expect(await idsAt(NOW)).toEqual([
+      'XAL-2031-06-r1',
       'XAL-2031-07-r1',
       'XAL-2031-08-r1',
+      'XDU-2031-06-r1',
       'XDU-2031-07-r1',
+      'XES-2031-06-r1',
       'XES-2031-07-r1',
     ]);
   });
@@ -83,10 +86,33 @@ describe('the seeded demo', () => {
 
   test('lets out no vintage before its release', async () => {
     const vintages = await stage.runtime.db.selectFrom('vintage').selectAll().execute();
-    expect(vintages).toHaveLength(5);
+    expect(vintages).toHaveLength(8);
     for (const { public_from, known_from, source_published_at } of vintages) {
       expect(source_published_at < known_from).toBe(true);
       expect(public_from! > known_from).toBe(true);
+    }
+  });
+
+  test('computes the last two months under a second version, read before it is used', async () => {
+    const used = await stage.runtime.db
+      .selectFrom('release')
+      .innerJoin('specification', 'specification.id', 'release.specification_id')
+      .select(['release.id', 'specification.version', 'holds_from'])
+      .select(['specification.approved_at', 'specification.created_at', 'release.created_at as at'])
+      .execute();
+    expect(Object.fromEntries(used.map(({ id, version }) => [id, version]))).toEqual({
+      'XAL-2031-06-r1': 1,
+      'XAL-2031-07-r1': 2,
+      'XAL-2031-08-r1': 2,
+      'XDU-2031-06-r1': 1,
+      'XDU-2031-07-r1': 1,
+      'XES-2031-06-r1': 1,
+      'XES-2031-07-r1': 2,
+      'XES-2031-08-r1': 2,
+    });
+    for (const { version, holds_from, created_at, approved_at, at } of used) {
+      expect(holds_from).toBe(version === 1 ? '2031-06' : '2031-07');
+      expect(created_at < approved_at! && approved_at! < at).toBe(true);
     }
   });
 
@@ -113,6 +139,6 @@ describe('the seeded demo', () => {
 
   test('says what it does', () => {
     expect(progress[0]).toBe('Seeding the demo: people');
-    expect(progress.at(-1)).toMatch(/^Seeding the demo: .*, \w+ 2031 \(5 of 5\)$/);
+    expect(progress.at(-1)).toMatch(/^Seeding the demo: .*, \w+ 2031 \(8 of 8\)$/);
   });
 });

@@ -5,7 +5,7 @@ import { demoData } from '../../seed/vintages.ts';
 import { growthFigure, surpriseFigure } from '../../src/lib/charts/figures.ts';
 import { compute } from '../../src/lib/econ/compute.ts';
 import { addPeriods } from '../../src/lib/econ/periods.ts';
-import type { ComputeResult } from '../../src/lib/econ/types.ts';
+import type { Assumptions, ComputeResult } from '../../src/lib/econ/types.ts';
 
 const START = '2001-09';
 const FORBIDDEN =
@@ -16,13 +16,15 @@ interface Written extends ReleaseWords {
   nameInText: string;
   period: string;
   result: ComputeResult;
+  assumptions: Assumptions;
 }
 
-/** Two years of releases of every economy. */
-const releases: Written[] = demoEconomies.flatMap(
-  ({ code, nameInText, assumptions, ...economy }) => {
-    const data = demoData({ code, nameInText, assumptions, ...economy });
-    return Array.from({ length: 24 }, (_, i) => {
+/** Two years of releases of every economy under each version of its specification. */
+const releases: Written[] = demoEconomies.flatMap((economy) => {
+  const { code, nameInText, specifications } = economy;
+  const data = demoData(economy, START);
+  return specifications.flatMap(({ assumptions }) =>
+    Array.from({ length: 24 }, (_, i) => {
       const vintage = data.vintage(336 + i);
       const series = (values: string[]) => ({ start: START, values: values.map(Number) });
       const result = compute({
@@ -32,14 +34,11 @@ const releases: Written[] = demoEconomies.flatMap(
         activity: series(vintage.activity),
         ...assumptions,
       });
-      const release = { code, nameInText, period: addPeriods(START, 336 + i), result };
-      return {
-        ...release,
-        ...releaseWords({ ...release, assumptions }),
-      };
-    });
-  },
-);
+      const release = { code, nameInText, period: addPeriods(START, 336 + i), result, assumptions };
+      return { ...release, ...releaseWords(release) };
+    }),
+  );
+});
 
 const sentences = (text: string) => text.split(/(?<=\.) /);
 
@@ -70,7 +69,9 @@ describe('the words of a release', () => {
       const growth = growthFigure(result.growth.at(-1)!);
       const said = growth === '0.00' ? 'did not change' : growth.replace('−', '');
       expect(explainer).toContain(said);
-      expect(/broad money fell/i.test(explainer)).toBe(growth.startsWith('−'));
+      expect(/broad money(, not seasonally adjusted,)? fell/i.test(explainer)).toBe(
+        growth.startsWith('−'),
+      );
     }
   });
 
@@ -114,6 +115,14 @@ describe('the words of a release', () => {
     }
   });
 
+  test('say of Farrowland alone that its money is not adjusted, and expect by the time of year', () => {
+    for (const { code, explainer } of releases) {
+      const unadjusted = code === 'XFA';
+      expect(explainer.includes(', not seasonally adjusted, ')).toBe(unadjusted);
+      expect(/was expected at this time of year[.;]/.test(explainer)).toBe(unadjusted);
+    }
+  });
+
   test('vary', () => {
     const forms = new Set(
       releases.map(({ headline, nameInText }) =>
@@ -125,9 +134,7 @@ describe('the words of a release', () => {
 
   test('are the same whenever they are written', () => {
     const last = releases.at(-1)!;
-    expect(releaseWords({ ...last, assumptions: { gap: { persistence: 0.9 } } })).toEqual(
-      releaseWords({ ...last, assumptions: { gap: { persistence: 0.9 } } }),
-    );
+    expect(releaseWords(last)).toEqual(releaseWords(last));
   });
 });
 
@@ -137,7 +144,6 @@ describe('the words of what a demo month may not bring', () => {
     releaseWords({
       ...last,
       result: { ...result, ...change },
-      assumptions: { gap: { persistence: 0.93 } },
     });
   const lastOf = (values: number[], value: number) => [...values.slice(0, -1), value];
 
@@ -160,6 +166,11 @@ describe('the words of what a demo month may not bring', () => {
     expect(explainer).toContain('growth of 0.39 per cent was expected');
   });
 
+  test('money that was expected not to change', () => {
+    const { explainer } = changed({ expected_growth: lastOf(result.expected_growth, -0.002) });
+    expect(explainer).toMatch(/[;,] (where )?no change was expected\./);
+  });
+
   test('money that did not change', () => {
     const { headline, explainer } = changed({
       growth: lastOf(result.growth, 0.001),
@@ -170,7 +181,7 @@ describe('the words of what a demo month may not bring', () => {
   });
 
   test('a gap without persistence', () => {
-    const words = releaseWords({ ...last, result, assumptions: {} });
+    const words = releaseWords({ ...last, result, assumptions: { ...last.assumptions, gap: {} } });
     expect(words.explainer).toContain('The same-month output effect of the surprise is');
   });
 });
