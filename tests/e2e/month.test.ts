@@ -2,11 +2,16 @@ import { mkdtemp, readFile, rm } from 'node:fs/promises';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { setTimeout as sleep } from 'node:timers/promises';
+import { sql } from 'kysely';
 import type { Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { DemoAccounts } from '../../seed/accounts.ts';
 import { gapFigure, growthSize, surpriseFigure } from '../../src/lib/charts/figures.ts';
+import { ENTRY } from '../../src/commands/build.mjs';
+import { ROOT } from '../../src/commands/run.mjs';
 import type { ComputeResult } from '../../src/lib/econ/types.ts';
+import { readEnv } from '../../src/lib/env.ts';
+import { startPool } from '../../src/lib/publication/pool.ts';
 import { type TestBrowser, startBrowser } from '../setup/browser.ts';
 import { type TestDatabase, testDatabase } from '../setup/database.ts';
 import { type TestServer, startServer } from '../setup/server.ts';
@@ -38,7 +43,9 @@ beforeAll(async () => {
     seed: { economies: ['XAL'], months: 2 },
   };
   const first = await startServer(options);
-  servers = [first, await startServer(options)];
+  // Both are one site: they share its public address, as processes behind one proxy do.
+  const env = { SLACKWATER_PUBLIC_URL: first.url };
+  servers = [first, await startServer({ ...options, env })];
   accounts = JSON.parse(await readFile(join(folder, 'demo-accounts.json'), 'utf8')) as DemoAccounts;
   browser = await startBrowser();
   editor = await signIn('editor');
@@ -223,6 +230,31 @@ describe('what readers then see', () => {
     expect(text).not.toContain('do not behave as the model requires');
     expect(text).toMatch(/80% band [+−]\d\.\d to [+−]\d\.\d/);
     await page.close();
+  });
+
+  it('stores every page as the same route draws it on demand', async () => {
+    const { rows } = await sql<{ address: string }>`
+      select distinct address from published where build is not null and visible_from <= now()
+    `.execute(database.db);
+    const env = readEnv({
+      SLACKWATER_MODE: 'demo',
+      DATABASE_URL: database.url,
+      SLACKWATER_DATA_DIR: folder,
+      SLACKWATER_PUBLIC_URL: servers[0]!.url,
+    });
+    const pool = startPool({ entry: ENTRY, workerData: { env, root: ROOT }, threads: 1 });
+    try {
+      expect(rows.length).toBeGreaterThan(12);
+      for (const { address } of rows) {
+        // The address of the page for what is missing answers as any missing one.
+        const [stored] = await everywhere(address);
+        const drawn = await pool.page(address, { at: new Date() });
+        expect(new TextDecoder().decode(drawn.body), address).toBe(stored!.body);
+        expect(drawn.status, address).toBe(stored!.status);
+      }
+    } finally {
+      await pool.close();
+    }
   });
 
   it('has a share image with words for those who do not see it', async () => {
