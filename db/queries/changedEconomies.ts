@@ -2,10 +2,10 @@ import { sql } from 'kysely';
 import type { Db } from '../connection.ts';
 
 /**
- * Economies whose announced dates or specification have changed, up to `at`, since their page in force was drawn;
- * those that are announced and have no page yet among them.
+ * Economies whose announced dates or specification have changed, up to `at`, since the page was drawn that is in
+ * force at `drawnUntil`; those that are announced and have no page yet among them.
  */
-export async function changedEconomies(db: Db, at: Date): Promise<string[]> {
+export async function changedEconomies(db: Db, at: Date, drawnUntil: Date): Promise<string[]> {
   const { rows } = await sql<{ code: string }>`
     select economy.code
     from economy
@@ -21,7 +21,7 @@ export async function changedEconomies(db: Db, at: Date): Promise<string[]> {
       select max(published.visible_from) as at from published
       join moment on moment.visible_from = published.visible_from and moment.ready
       where published.address = '/economies/' || economy.code || '/'
-        and published.visible_from <= ${at}
+        and published.visible_from <= ${drawnUntil}
     ) drawn
     where announced.at is not null
       and greatest(announced.at, specified.at) > coalesce(drawn.at, '-infinity')

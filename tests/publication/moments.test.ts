@@ -144,9 +144,13 @@ describe('an announced date', () => {
 
   it('brings the economy its page three seconds after it is drawn, once', async () => {
     await announce('2031-11');
+    expect(await isBehind(stage.ctx.db, stage.ctx.now())).toBe(true);
     await bringUpToDate(stage.ctx);
     const one = await process();
     expect(await one.text('/economies/XTA/')).toBeNull();
+    // Whoever looks again before it is in force has nothing to do.
+    at('2031-10-01T07:00:01Z');
+    expect(await isBehind(stage.ctx.db, stage.ctx.now())).toBe(false);
     at('2031-10-01T07:00:03Z');
     expect(await one.text('/economies/XTA/')).toBe('/economies/XTA/: ');
     await bringUpToDate(stage.ctx);

@@ -59,7 +59,10 @@ export async function bringUpToDate(ctx: ServiceContext): Promise<void> {
   });
 }
 
-/** Whether a scheduled release waits for its pages: a process died, or drawing failed. */
+/**
+ * Whether anything waits to be drawn: a scheduled release, a changed date or specification, or the very first pages.
+ * A process died, or drawing failed.
+ */
 export async function isBehind(db: Db, at: Date): Promise<boolean> {
   const waiting = await db
     .selectFrom('release')
@@ -69,7 +72,7 @@ export async function isBehind(db: Db, at: Date): Promise<boolean> {
     .where((eb) => eb('ready_for', 'is distinct from', eb.ref('scheduled_for')))
     .limit(1)
     .executeTakeFirst();
-  return waiting !== undefined;
+  return waiting !== undefined || (await changes(db, at)) !== null;
 }
 
 /**
@@ -218,9 +221,8 @@ async function pagesBefore(ctx: ServiceContext, view: View, release: Planned): P
  */
 async function drawImmediate(ctx: ServiceContext): Promise<Row[]> {
   const now = ctx.now();
-  const changed = await changedEconomies(ctx.db, now);
-  const isFirst = !(await currentHashes(ctx.db, ['/'], now)).has('/');
-  if (changed.length === 0 && !isFirst) return [];
+  const changed = await changes(ctx.db, now);
+  if (!changed) return [];
   const economies = await listEconomies(ctx.db, { at: now });
   const pages = [
     ...SITE_PAGES,
@@ -234,6 +236,14 @@ async function drawImmediate(ctx: ServiceContext): Promise<Row[]> {
   const rows = await Promise.all(pages.map((address) => drawPage(ctx, address, { at: now })));
   const inForce = await currentHashes(ctx.db, pages, now);
   return rows.filter((row) => inForce.get(row.address) !== row.kept.hash);
+}
+
+/** Codes of the economies that changed outside of any moment; null where nothing did, and the site has its pages. */
+async function changes(db: Db, at: Date): Promise<string[] | null> {
+  const effective = new Date(at.getTime() + IMMEDIATE_MS);
+  const changed = await changedEconomies(db, at, effective);
+  if (changed.length > 0) return changed;
+  return (await currentHashes(db, ['/'], effective)).has('/') ? null : [];
 }
 
 async function drawPage(ctx: ServiceContext, address: string, view: View): Promise<Row> {

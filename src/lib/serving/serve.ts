@@ -53,7 +53,7 @@ export async function serveSite(
       onProgress(`Drawing pages for this build, ${done} of ${all}`);
   });
   if (drawn > 0) log.info({ pages: drawn }, 'drew the pages for this build');
-  await bringUpToDate(ctx);
+  if (await isBehind(runtime.db, ctx.now())) await bringUpToDate(ctx);
 
   const pages = new PublishedPages(runtime.db, runtime.clock, runtime.store);
   await pages.start(databaseUrl(env), (error) => log.warn({ err: error }, 'pages fall behind'));
