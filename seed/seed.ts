@@ -1,5 +1,6 @@
 import { steppedClock } from '../src/lib/clock.ts';
 import { addPeriods } from '../src/lib/econ/periods.ts';
+import { redraw } from '../src/lib/publication/moments.ts';
 import { type Runtime, contextFor } from '../src/lib/runtime.ts';
 import type { Actor, ServiceContext } from '../src/lib/services/context.ts';
 import { createKey } from '../src/lib/services/keys/create.ts';
@@ -15,6 +16,11 @@ import { demoData } from './vintages.ts';
 /** Months of releases in the demo, the newest of them not out everywhere, and in the full one. */
 const MONTHS = 4;
 const FULL_MONTHS = 24;
+
+/** After how many pages it is told again how far drawing is. */
+const PAGES_TOLD = 25;
+
+const SYSTEM = { id: null, role: 'system', name: 'Slackwater' } as const;
 
 const WEEK = 7 * 24 * 3_600_000;
 
@@ -49,9 +55,7 @@ export async function seedDemo(runtime: Runtime, options: SeedOptions): Promise<
   });
 
   options.onProgress('Seeding the demo: people');
-  const { cast, accounts } = await createPeople(
-    as({ id: null, role: 'system', name: 'Slackwater' }),
-  );
+  const { cast, accounts } = await createPeople(as(SYSTEM));
   const steps = economies.flatMap((economy, i) =>
     economySteps({
       economy,
@@ -66,6 +70,11 @@ export async function seedDemo(runtime: Runtime, options: SeedOptions): Promise<
   );
   await play(steps, clock, options.onProgress);
   clock.set(options.now);
+  await redraw(as(SYSTEM), (done, all) => {
+    if (done === all || done % PAGES_TOLD === 0) {
+      options.onProgress(`Seeding the demo: pages (${done} of ${all})`);
+    }
+  });
   const key = await createKey(as(cast.subscriber), { name: 'Demo', scopes: [...SCOPES] });
   return { accounts, api_key: key.plain };
 }

@@ -18,6 +18,7 @@ import { acceptVintage } from '../src/lib/services/vintages/accept.ts';
 import { firstMonth, releaseTimes } from './calendar.ts';
 import type { DemoEconomy, DemoSeries, DemoSpecification } from './economy.ts';
 import { releaseWords } from './text.ts';
+import { withoutDrawing } from './undrawn.ts';
 import { type DemoData, vintageCsv } from './vintages.ts';
 
 /** One thing that somebody at the desk does at a time. */
@@ -120,7 +121,7 @@ function versionSteps(assignment: Assignment, version: Version, isFirst: boolean
     },
     {
       at: new Date(drafted + (isFirst ? HOUR : VERSION_READ_WITHIN)),
-      work: () => approveSpecification(as(reviewer), version.id),
+      work: () => approveSpecification(withoutDrawing(as(reviewer)), version.id),
     },
   ];
 }
@@ -133,7 +134,7 @@ function announcementSteps({ economy, reviewer, as, now, start, months }: Assign
     const earliest = start.getTime() + 4 * HOUR;
     const at = new Date(Math.max(earliest, due.getTime() - ANNOUNCED_AHEAD));
     const announcement = { economy: economy.code, period, dueAt: due };
-    return [{ at, work: () => announce(as(reviewer), announcement) }];
+    return [{ at, work: () => announce(withoutDrawing(as(reviewer)), announcement) }];
   });
 }
 
@@ -183,7 +184,10 @@ function releaseSteps(assignment: Assignment, version: Version, period: string):
       progress: `${economy.name}, ${periodLabel(period)}`,
       work: async () => approveRelease(as(reviewer), { id, version: await seenBy(reviewer) }),
     },
-    { at: times.scheduled, work: () => scheduleRelease(as(reviewer), { id, at: times.due }) },
+    {
+      at: times.scheduled,
+      work: () => scheduleRelease(withoutDrawing(as(reviewer)), { id, at: times.due }),
+    },
   ];
 }
 

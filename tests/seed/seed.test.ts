@@ -1,6 +1,9 @@
 import { afterAll, beforeAll, describe, expect, test } from 'vitest';
 import type { DemoAccounts } from '../../seed/accounts.ts';
 import { seedDemo } from '../../seed/seed.ts';
+import { currentRows } from '../../db/queries/published.ts';
+import { redraw } from '../../src/lib/publication/moments.ts';
+import { contextFor } from '../../src/lib/runtime.ts';
 import { verifyAudit } from '../../src/lib/services/audit.ts';
 import { upcoming } from '../../src/lib/services/calendar/upcoming.ts';
 import { keyVerifier } from '../../src/lib/services/keys/verify.ts';
@@ -9,6 +12,7 @@ import { type Stage, seedStage } from './stage.ts';
 
 const NOW = new Date('2031-10-01T13:20:00Z');
 const MINUTE = 60_000;
+const SYSTEM = { id: null, role: 'system', name: 'Slackwater' } as const;
 
 let stage: Stage;
 let accounts: DemoAccounts;
@@ -116,6 +120,22 @@ describe('the seeded demo', () => {
     }
   });
 
+  test('draws each page in force or coming once, for the instant it counts from', async () => {
+    const { db, store, build } = stage.runtime;
+    const pages = await currentRows(db, NOW);
+    const drawn = pages.filter(({ headers }) => headers['content-type']?.startsWith('text/html'));
+    expect(drawn.map(({ address }) => address)).toContain('/economies/XES/');
+    expect(drawn).toHaveLength(stage.drawn.length);
+    for (const { address, visible_from, artefact_hash } of drawn) {
+      const body = new TextDecoder().decode((await store.get(artefact_hash))!);
+      expect(body).toBe(`${address} at ${visible_from.toISOString()}`);
+    }
+    expect(
+      pages.some(({ headers }) => headers['content-type'] === 'application/octet-stream'),
+    ).toBe(false);
+    expect(await redraw({ ...contextFor(stage.runtime, SYSTEM), now: () => NOW, build })).toBe(0);
+  });
+
   test('has every release approved by somebody who made no part of it', async () => {
     const releases = await stage.runtime.db.selectFrom('release').selectAll().execute();
     const parts = await stage.runtime.db.selectFrom('release_contributor').selectAll().execute();
@@ -139,6 +159,8 @@ describe('the seeded demo', () => {
 
   test('says what it does', () => {
     expect(progress[0]).toBe('Seeding the demo: people');
-    expect(progress.at(-1)).toMatch(/^Seeding the demo: .*, \w+ 2031 \(8 of 8\)$/);
+    const releases = progress.filter((text) => / \w+ 2031 /.test(text));
+    expect(releases.at(-1)).toMatch(/^Seeding the demo: .*, \w+ 2031 \(8 of 8\)$/);
+    expect(progress.at(-1)).toMatch(/^Seeding the demo: pages \((\d+) of \1\)$/);
   });
 });

@@ -60,7 +60,8 @@ function drawingWorkers(drawn: Stage['drawn']): Workers {
     async page(address, { at }) {
       drawn.push({ address, at });
       const body = new TextEncoder().encode(`${address} at ${at.toISOString()}`);
-      return { status: address === '/404/' ? 404 : 200, headers: {}, body };
+      const headers = { 'content-type': 'text/html; charset=utf-8' };
+      return { status: address === '/404/' ? 404 : 200, headers, body };
     },
   });
 }
