@@ -40,7 +40,6 @@ export async function approveRelease(
         state: 'approved',
         approved_at: trx.now(),
         approved_by: actor.id,
-        build: trx.build,
         version: release.version + 1,
       })
       .where('id', '=', id)
