@@ -1,4 +1,5 @@
 import { HTTPException } from 'hono/http-exception';
+import { BusyError } from '../src/lib/publication/workers.ts';
 import { ServiceError } from '../src/lib/services/context.ts';
 import { RefusedError, problem } from '../src/lib/econ/refusal.ts';
 import type { ApiContext } from './context.ts';
@@ -30,6 +31,15 @@ function partsOf(error: Error): ProblemParts | null {
       type: problemType('not-found'),
       title: 'There is nothing here',
       detail: error.message,
+    };
+  }
+  if (error instanceof BusyError) {
+    return {
+      status: 503,
+      type: problemType('unavailable'),
+      title: 'Too much is being computed',
+      detail: error.message,
+      headers: { 'retry-after': '5' },
     };
   }
   if (error instanceof HTTPException && error.status < 500) {

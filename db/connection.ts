@@ -24,7 +24,16 @@ export function databaseOn(shared: pg.Pool): Db {
 
 /** The pool itself, for what speaks to PostgreSQL without Kysely (sign-in, LISTEN). */
 export function pool(url: string, max = 10): pg.Pool {
-  const made = new pg.Pool({ connectionString: url, max, connectionTimeoutMillis: 5_000 });
+  const made = new pg.Pool({
+    connectionString: url,
+    max,
+    connectionTimeoutMillis: 5_000,
+    keepAlive: true,
+    query_timeout: 120_000,
+  });
+  // A connection that breaks while it is lent out and idle would end the process too: whoever holds it finds out at
+  // the next query.
+  made.on('connect', (client) => client.on('error', () => {}));
   // An idle connection that the server closes must not end the process; the next query reconnects.
   made.on('error', () => {});
   return made;

@@ -6,6 +6,17 @@ CREATE FUNCTION public.refuse_change() RETURNS trigger
         using errcode = 'restrict_violation';
     end $$;
 
+CREATE FUNCTION public.refuse_change_of_scheduled() RETURNS trigger
+    LANGUAGE plpgsql
+    AS $$
+    begin
+      if exists (select from release where id = old.release_id and state = 'scheduled') then
+        raise exception '% of a scheduled or published release never changes', tg_table_name
+          using errcode = 'restrict_violation';
+      end if;
+      return old;
+    end $$;
+
 CREATE TABLE public.account (
     id text NOT NULL,
     account_id text NOT NULL,
@@ -173,6 +184,7 @@ CREATE TABLE public.published (
     artefact_hash text NOT NULL,
     status smallint NOT NULL,
     headers jsonb NOT NULL,
+    drawn_at timestamp with time zone NOT NULL,
     build text,
     generation bigint NOT NULL,
     CONSTRAINT published_address_check CHECK ((address ~~ '/%'::text))
@@ -447,7 +459,11 @@ CREATE INDEX vintage_by_economy ON public.vintage USING btree (economy_code, sou
 
 CREATE TRIGGER audit_is_final BEFORE DELETE OR UPDATE OR TRUNCATE ON public.audit FOR EACH STATEMENT EXECUTE FUNCTION public.refuse_change();
 
+CREATE TRIGGER release_artefact_stays BEFORE DELETE OR UPDATE ON public.release_artefact FOR EACH ROW EXECUTE FUNCTION public.refuse_change_of_scheduled();
+
 CREATE TRIGGER release_value_is_final BEFORE UPDATE OR TRUNCATE ON public.release_value FOR EACH STATEMENT EXECUTE FUNCTION public.refuse_change();
+
+CREATE TRIGGER release_value_stays BEFORE DELETE ON public.release_value FOR EACH ROW EXECUTE FUNCTION public.refuse_change_of_scheduled();
 
 CREATE TRIGGER vintage_series_is_final BEFORE DELETE OR UPDATE OR TRUNCATE ON public.vintage_series FOR EACH STATEMENT EXECUTE FUNCTION public.refuse_change();
 

@@ -134,6 +134,7 @@ export interface PublishedTable {
   artefact_hash: string;
   status: number;
   headers: Json<Record<string, string>>;
+  drawn_at: Time;
   build: string | null;
   generation: Bigint;
 }

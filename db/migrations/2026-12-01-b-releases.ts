@@ -147,6 +147,8 @@ export async function up(db: Kysely<any>): Promise<void> {
       artefact_hash text not null references artefact (hash),
       status smallint not null,
       headers jsonb not null,
+      -- what was committed by then is in it
+      drawn_at timestamptz not null,
       -- null for what is frozen; pages are drawn again for a new build or public address
       build text,
       generation bigint not null,
@@ -201,6 +203,18 @@ export async function up(db: Kysely<any>): Promise<void> {
       for each statement execute function refuse_change();
     create trigger release_value_is_final before update or truncate on release_value
       for each statement execute function refuse_change();
+    create function refuse_change_of_scheduled() returns trigger language plpgsql as $$
+    begin
+      if exists (select from release where id = old.release_id and state = 'scheduled') then
+        raise exception '% of a scheduled or published release never changes', tg_table_name
+          using errcode = 'restrict_violation';
+      end if;
+      return old;
+    end $$;
+    create trigger release_value_stays before delete on release_value
+      for each row execute function refuse_change_of_scheduled();
+    create trigger release_artefact_stays before update or delete on release_artefact
+      for each row execute function refuse_change_of_scheduled();
     create trigger vintage_series_is_final before update or delete or truncate on vintage_series
       for each statement execute function refuse_change();
   `.execute(db);

@@ -9,6 +9,7 @@ export interface PublishedRow {
   artefact_hash: string;
   status: number;
   headers: Record<string, string>;
+  drawn_at: Date;
 }
 
 const COLUMNS = [
@@ -17,6 +18,7 @@ const COLUMNS = [
   'published.artefact_hash',
   'published.status',
   'published.headers',
+  'published.drawn_at',
 ] as const;
 
 /** How often `published` has changed; every change raises it. */

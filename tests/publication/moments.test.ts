@@ -1,5 +1,13 @@
 import { afterEach, beforeEach, describe, expect, it } from 'vitest';
-import { bringUpToDate, isBehind, redraw, takeOut } from '../../src/lib/publication/moments.ts';
+import { sql } from 'kysely';
+import {
+  bringUpToDate,
+  isBehind,
+  lateReleases,
+  redraw,
+  takeOut,
+} from '../../src/lib/publication/moments.ts';
+import type { View } from '../../src/lib/services/view.ts';
 import { PublishedPages } from '../../src/lib/publication/serve.ts';
 import { scene } from './scene.ts';
 
@@ -28,6 +36,18 @@ async function process() {
 function at(time: string): void {
   stage.clock.at = new Date(time);
 }
+
+const announce = (period: string) =>
+  stage.ctx.db
+    .insertInto('announcement')
+    .values({
+      economy_code: 'XTA',
+      period,
+      announced_at: stage.ctx.now(),
+      due_at: new Date('2031-12-01T08:00:00Z'),
+      announced_by: 'reviewer',
+    })
+    .execute();
 
 describe('a coming moment', () => {
   it('shows nothing before its second and everything from it, in every process, with no work in between', async () => {
@@ -127,18 +147,88 @@ describe('a coming moment', () => {
   });
 });
 
+describe('trouble while drawing', () => {
+  const whileDrawing = (deed: (address: string) => Promise<void> | void) => {
+    const { page } = stage.ctx.workers;
+    return {
+      ...stage.ctx,
+      workers: {
+        ...stage.ctx.workers,
+        page: async (address: string, view: View) => {
+          await deed(address);
+          return page(address, view);
+        },
+      },
+    };
+  };
+
+  it('draws a later moment without the one whose second passed meanwhile', async () => {
+    await stage.schedule('2031-07', '2031-10-01T07:30:00Z');
+    await stage.schedule('2031-08', '2031-10-01T08:00:00Z');
+    let drawn = 0;
+    await bringUpToDate(
+      whileDrawing(() => {
+        if (++drawn === 15) at('2031-10-01T07:30:01Z');
+      }),
+    );
+    const one = await process();
+    at('2031-10-01T08:00:00Z');
+    expect(await one.text('/')).toBe('/: 2031-08');
+    expect(await one.text('/releases/XTA/2031-07/')).toBeNull();
+    expect(await lateReleases(stage.ctx.db, stage.ctx.now())).toEqual(['XTA-2031-07-r1']);
+  });
+
+  it('puts earlier moments in force where a later one cannot be drawn', async () => {
+    await stage.schedule('2031-07', '2031-10-01T07:30:00Z');
+    await stage.schedule('2031-08', '2031-10-01T08:00:00Z');
+    const broken = whileDrawing((address) => {
+      if (address.startsWith('/releases/XTA/2031-08')) throw new Error('no page');
+    });
+    await expect(bringUpToDate(broken)).rejects.toThrow('no page');
+    const one = await process();
+    at('2031-10-01T07:30:00Z');
+    expect(await one.text('/')).toBe('/: 2031-07');
+  });
+
+  it('survives the loss of the connection that holds the lock', async () => {
+    await stage.schedule('2031-08', '2031-10-01T08:00:00Z');
+    let ended = false;
+    const cut = whileDrawing(async () => {
+      if (ended) return;
+      ended = true;
+      await sql`
+        select pg_terminate_backend(pid) from pg_locks
+        where locktype = 'advisory' and granted and pid <> pg_backend_pid()
+          and database = (select oid from pg_database where datname = current_database())
+      `.execute(stage.ctx.db);
+    });
+    await bringUpToDate(cut).catch(() => {});
+    await bringUpToDate(stage.ctx);
+    const one = await process();
+    at('2031-10-01T08:00:00Z');
+    expect(await one.text('/')).toBe('/: 2031-08');
+  });
+
+  it('finds a date that was announced while pages were drawn', async () => {
+    await stage.schedule('2031-08', '2031-10-01T08:00:00Z');
+    let announced = false;
+    const busy = whileDrawing(async () => {
+      if (announced) return;
+      announced = true;
+      at('2031-10-01T07:00:01Z');
+      await announce('2031-11');
+    });
+    await announce('2031-08');
+    await bringUpToDate(busy);
+    at('2031-10-01T07:00:10Z');
+    expect(await isBehind(stage.ctx.db, stage.ctx.now())).toBe(true);
+    await bringUpToDate(stage.ctx);
+    at('2031-10-01T07:00:20Z');
+    expect(await isBehind(stage.ctx.db, stage.ctx.now())).toBe(false);
+  });
+});
+
 describe('an announced date', () => {
-  const announce = (period: string) =>
-    stage.ctx.db
-      .insertInto('announcement')
-      .values({
-        economy_code: 'XTA',
-        period,
-        announced_at: stage.ctx.now(),
-        due_at: new Date('2031-12-01T08:00:00Z'),
-        announced_by: 'reviewer',
-      })
-      .execute();
   const rowsOf = async (address: string) =>
     stage.ctx.db.selectFrom('published').where('address', '=', address).selectAll().execute();
 

@@ -111,6 +111,29 @@ describe('a stored page', () => {
   });
 });
 
+describe('the memory of a process', () => {
+  it('reads the disk once for many who ask at once, and remembers what is not there', async () => {
+    let reads = 0;
+    const store = {
+      ...stage.ctx.store,
+      get: (...asked: Parameters<typeof stage.ctx.store.get>) => {
+        reads++;
+        return stage.ctx.store.get(...asked);
+      },
+    };
+    const pages = new PublishedPages(stage.ctx.db, { now: stage.ctx.now }, store);
+    await pages.sync();
+    const { artefact_hash } = pages.answer(PAGE)!.row;
+    reads = 0;
+    await Promise.all(Array.from({ length: 50 }, () => pages.bytes(artefact_hash, 'br')));
+    expect(reads).toBe(1);
+    const unknown = 'f'.repeat(64);
+    expect(await pages.bytes(unknown, 'br')).toBeNull();
+    expect(await pages.bytes(unknown, 'br')).toBeNull();
+    expect(reads).toBe(2);
+  });
+});
+
 describe('addresses', () => {
   it.each([
     ['/releases/xal/2031-04', '/releases/XAL/2031-04/'],
@@ -120,6 +143,13 @@ describe('addresses', () => {
     ['/data/xal.Money_Surprise.m.csv', '/data/XAL.money_surprise.M.csv'],
     ['/', '/'],
     ['/method/', '/method/'],
+    ['/Method', '/method/'],
+    ['/api', '/api/'],
+    ['/releases/XAL/2026-10/R1', '/releases/XAL/2026-10/r1/'],
+    ['/releases/xal/2000-q4/r1/', '/releases/XAL/2000-Q4/r1/'],
+    ['/images/xal/2000-q4/Surprise-Wide.png', '/images/XAL/2000-Q4/surprise-wide.png'],
+    ['/data/releases/XAL-2026-10-r1/figures.csv', '/data/releases/XAL-2026-10-r1/figures.csv'],
+    ['/Data/Releases/XAL-2000-Q4-r1/Request.json', '/data/releases/XAL-2000-Q4-r1/request.json'],
   ])('%s has the one form %s', (given, canonical) => {
     expect(canonicalAddress(given)).toBe(canonical);
   });
@@ -128,5 +158,32 @@ describe('addresses', () => {
     expect(pathOf('/method/?a=1#b')).toBe('/method/');
     expect(pathOf('/%E2%82%AC')).toBe('/€');
     expect(pathOf('/%E2%28')).toBeNull();
+  });
+
+  it.each([
+    '/desk/../method/',
+    '/./method/',
+    '/method/..',
+    '/%2e%2E/method/',
+    '/%252e%252e/method/',
+    '//method/',
+    '/method//',
+    '/desk%2Fdata',
+    '/desk\\data',
+    '/desk%5Cdata',
+    '/desk/releases/%00/',
+    '/desk/releases/%2500/',
+    'http://elsewhere.example/',
+    '*',
+    '',
+  ])('%j is no address: its parts could be read in two ways', (target) => {
+    expect(pathOf(target)).toBeNull();
+  });
+
+  it('may hold dots within a name, and anything in the query', () => {
+    expect(pathOf('/data/XAL.money_surprise.M.csv?next=/a/../b%00')).toBe(
+      '/data/XAL.money_surprise.M.csv',
+    );
+    expect(pathOf('/.well-known/x..y')).toBe('/.well-known/x..y');
   });
 });

@@ -38,7 +38,7 @@ export function registerCreateScenario(api: Api, { verify, limits }: ApiParts): 
         description: 'The result; arrays run over `periods`, in log points.',
         content: { 'application/json': { schema: resultSchema } },
       },
-      ...problems(400, 413, 415, 422, ...KEYED),
+      ...problems(400, 413, 415, 422, 503, ...KEYED),
     },
   });
   api.openapi(route, async (c) => {

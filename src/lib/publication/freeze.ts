@@ -7,6 +7,7 @@ import { firstPublished } from '../services/releases/public.ts';
 import { type ReleaseValue, valuesOf } from '../services/series/concepts.ts';
 import { figuresFile, inputsFile } from '../services/series/figuresFile.ts';
 import { bundleOf } from './bundle.ts';
+import { releasePages } from './plan.ts';
 import { type Kept, keep, recordArtefacts } from './artefacts.ts';
 
 /** Everything of a release that is fixed at approval: drawn and stored, waiting for the transaction that keeps it. */
@@ -29,6 +30,7 @@ export async function prepareFreeze(ctx: ServiceContext, releaseId: string): Pro
     .select([
       'release.period',
       'release.economy_code',
+      'release.revision',
       'release.headline',
       'release.explainer',
       'release.version',
@@ -65,6 +67,7 @@ export async function prepareFreeze(ctx: ServiceContext, releaseId: string): Pro
     source: release.source,
     methodVersion,
   });
+  await refuseUndrawable(ctx, release, releaseId);
   const { facts, race } = await ctx.workers.examine(
     request,
     result,
@@ -103,6 +106,21 @@ export async function prepareFreeze(ctx: ServiceContext, releaseId: string): Pro
       })),
     ),
   };
+}
+
+/** A page that cannot be drawn would hold up every release after it: so it is drawn once before anything is frozen. */
+async function refuseUndrawable(
+  ctx: ServiceContext,
+  release: { economy_code: string; period: string; revision: number },
+  id: string,
+): Promise<void> {
+  const address = releasePages({ ...release, economyCode: release.economy_code })[1]!;
+  const drawn = await ctx.workers.page(address, { at: ctx.now(), include: id }).catch(() => null);
+  if (drawn?.status === 200) return;
+  throw new ServiceError(
+    'invalid',
+    `The page of ${id} cannot be drawn from its words and figures; send it back to be mended.`,
+  );
 }
 
 interface FileToKeep {

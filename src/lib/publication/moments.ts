@@ -27,6 +27,8 @@ interface Row {
   status: number;
   headers: Record<string, string>;
   isPage: boolean;
+  /** What was committed by then is in it. */
+  drawnAt: Date;
 }
 
 interface Moment {
@@ -37,26 +39,43 @@ interface Moment {
 
 /**
  * Draws what has changed: what counts at once (announced dates, a new economy) and every coming moment in order,
- * each on top of the one before, and puts all of it in force in one transaction. Throws, with nothing changed,
- * where a page cannot be drawn; the next call, from whichever process, finds the same work and does it.
+ * each on top of the one before, and puts all of it in force in one transaction. Where a moment cannot be drawn,
+ * those before it count all the same, and it throws; the next call, from whichever process, finds the same work.
  */
 export async function bringUpToDate(ctx: ServiceContext): Promise<void> {
   await exclusively(ctx.db, async () => {
-    const coming = await comingReleases(ctx.db, ctx.now());
-    const moments: Moment[] = [];
-    for (const releases of groupBySecond(coming)) {
-      const at = releases[0]!.at;
-      moments.push({ at, releases, rows: await drawMoment(ctx, at, releases) });
+    for (;;) {
+      const { moments, failure } = await drawAll(ctx);
+      if (!(await putInForce(ctx, moments))) continue;
+      if (failure) throw failure.error;
+      return;
     }
-    const immediate = await drawImmediate(ctx);
-    const effective = new Date(ctx.now().getTime() + IMMEDIATE_MS);
-    // A moment within the next seconds is drawn with the same announcements: it needs no change before it.
-    const isCovered = moments.some((moment) => moment.at <= effective);
-    if (immediate.length > 0 && !isCovered) {
-      moments.unshift({ at: effective, releases: [], rows: immediate });
-    }
-    await putInForce(ctx, moments);
   });
+}
+
+async function drawAll(
+  ctx: ServiceContext,
+): Promise<{ moments: Moment[]; failure: { error: unknown } | null }> {
+  const coming = await comingReleases(ctx.db, ctx.now());
+  const moments: Moment[] = [];
+  let failure: { error: unknown } | null = null;
+  for (const releases of groupBySecond(coming)) {
+    const at = releases[0]!.at;
+    try {
+      moments.push({ at, releases, rows: await drawMoment(ctx, at, releases) });
+    } catch (error) {
+      failure = { error };
+      break;
+    }
+  }
+  const immediate = await drawImmediate(ctx);
+  const effective = new Date(ctx.now().getTime() + IMMEDIATE_MS);
+  // A moment within the next seconds is drawn with the same announcements: it needs no change before it.
+  const isCovered = moments.some((moment) => moment.at <= effective);
+  if (immediate.length > 0 && !isCovered) {
+    moments.unshift({ at: effective, releases: [], rows: immediate });
+  }
+  return { moments, failure };
 }
 
 /**
@@ -73,6 +92,18 @@ export async function isBehind(db: Db, at: Date): Promise<boolean> {
     .limit(1)
     .executeTakeFirst();
   return waiting !== undefined || (await changes(db, at)) !== null;
+}
+
+/** Scheduled releases whose second has passed without their pages: they show nowhere, and need another time. */
+export async function lateReleases(db: Db, at: Date): Promise<string[]> {
+  const rows = await db
+    .selectFrom('release')
+    .select('id')
+    .where('state', '=', 'scheduled')
+    .where('scheduled_for', '<=', at)
+    .where((eb) => eb('ready_for', 'is distinct from', eb.ref('scheduled_for')))
+    .execute();
+  return rows.map((row) => row.id);
 }
 
 /**
@@ -145,13 +176,25 @@ export async function redraw(
   });
 }
 
+/** The end of the queue of those in this process who want the lock, for each database. */
+const queues = new WeakMap<Db, Promise<unknown>>();
+
+/** One at a time: here by a queue, so that waiting takes no connection, and among processes by the advisory lock. */
 async function exclusively<T>(db: Db, work: () => Promise<T>): Promise<T> {
+  const before = queues.get(db) ?? Promise.resolve();
+  const mine = before.catch(() => {}).then(() => withLock(db, work));
+  queues.set(db, mine);
+  return mine;
+}
+
+function withLock<T>(db: Db, work: () => Promise<T>): Promise<T> {
   return db.connection().execute(async (connection) => {
     await sql`select pg_advisory_lock(${PUBLICATION_LOCK})`.execute(connection);
     try {
       return await work();
     } finally {
-      await sql`select pg_advisory_unlock(${PUBLICATION_LOCK})`.execute(connection);
+      // A connection that broke has given the lock back already.
+      await sql`select pg_advisory_unlock(${PUBLICATION_LOCK})`.execute(connection).catch(() => {});
     }
   });
 }
@@ -185,7 +228,8 @@ function groupBySecond(coming: Coming[]): Coming[][] {
 }
 
 async function drawMoment(ctx: ServiceContext, at: Date, releases: Coming[]): Promise<Row[]> {
-  const view: View = { at, rehearsedAt: ctx.now() };
+  const drawnAt = ctx.now();
+  const view: View = { at, rehearsedAt: drawnAt };
   const pages = new Set<string>(SITE_PAGES);
   const files: PlacedFile[] = [];
   for (const release of releases) {
@@ -200,8 +244,10 @@ async function drawMoment(ctx: ServiceContext, at: Date, releases: Coming[]): Pr
       'content-type': kept.mediaType,
       'x-content-type-options': 'nosniff',
       'access-control-allow-origin': '*',
+      // An image opened by itself is a document: it may do nothing.
+      'content-security-policy': "default-src 'none'; sandbox",
     };
-    rows.push({ address, kept, status: 200, headers, isPage: false });
+    rows.push({ address, kept, status: 200, headers, isPage: false, drawnAt });
   }
   return rows;
 }
@@ -224,18 +270,19 @@ async function drawImmediate(ctx: ServiceContext): Promise<Row[]> {
   const changed = await changes(ctx.db, now);
   if (!changed) return [];
   const economies = await listEconomies(ctx.db, { at: now });
-  const pages = [
-    ...SITE_PAGES,
-    ...economies
-      .filter(({ economy }) => changed.includes(economy.code))
-      .flatMap(({ economy, latest }) => [
-        economyPage(economy.code),
-        ...(latest ? releasePages(latest) : []),
-      ]),
-  ];
+  const ofChanged = economies
+    .filter(({ economy }) => changed.includes(economy.code))
+    .flatMap(({ economy, latest }) => [
+      economyPage(economy.code),
+      ...(latest ? releasePages(latest) : []),
+    ]);
+  const pages = [...SITE_PAGES, ...ofChanged];
   const rows = await Promise.all(pages.map((address) => drawPage(ctx, address, { at: now })));
   const inForce = await currentHashes(ctx.db, pages, now);
-  return rows.filter((row) => inForce.get(row.address) !== row.kept.hash);
+  // The page of a changed economy is put in force even where it looks the same: it is what says that it was drawn.
+  return rows.filter(
+    (row) => ofChanged.includes(row.address) || inForce.get(row.address) !== row.kept.hash,
+  );
 }
 
 /** Codes of the economies that changed outside of any moment; null where nothing did, and the site has its pages. */
@@ -247,6 +294,8 @@ async function changes(db: Db, at: Date): Promise<string[] | null> {
 }
 
 async function drawPage(ctx: ServiceContext, address: string, view: View): Promise<Row> {
+  // Drawn again later, a page still shows its own instant.
+  const drawnAt = new Date(Math.min(ctx.now().getTime(), view.at.getTime()));
   const page = await ctx.workers.page(address, view);
   const expected = address === '/404/' ? 404 : 200;
   if (page.status !== expected) {
@@ -254,22 +303,25 @@ async function drawPage(ctx: ServiceContext, address: string, view: View): Promi
   }
   const mediaType = page.headers['content-type'] ?? 'text/html; charset=utf-8';
   const kept = await keep(ctx, page.body, mediaType);
-  return { address, kept, status: page.status, headers: page.headers, isPage: true };
+  return { address, kept, status: page.status, headers: page.headers, isPage: true, drawnAt };
 }
 
-async function putInForce(ctx: ServiceContext, moments: Moment[]): Promise<void> {
+/**
+ * Puts drawn moments in force. Answers false, with nothing changed, where one's second has passed meanwhile: it stays
+ * out, and what was drawn on top of it has to be drawn without it.
+ */
+async function putInForce(ctx: ServiceContext, moments: Moment[]): Promise<boolean> {
   const now = ctx.now();
-  // What is late by now stays out: a moment never counts from a second that has passed.
-  const inTime = moments.filter((moment) => moment.at > now);
-  if (inTime.length === 0) return;
+  if (moments.some((moment) => moment.at <= now)) return false;
+  if (moments.length === 0) return true;
   await ctx.db.transaction().execute(async (trx) => {
     const generation = await nextGeneration(trx);
     await recordArtefacts(
       trx,
-      inTime.flatMap((moment) => moment.rows.map((row) => row.kept)),
+      moments.flatMap((moment) => moment.rows.map((row) => row.kept)),
       now,
     );
-    for (const moment of inTime) {
+    for (const moment of moments) {
       await trx.deleteFrom('published').where('visible_from', '=', moment.at).execute();
       await trx
         .insertInto('moment')
@@ -298,6 +350,7 @@ async function putInForce(ctx: ServiceContext, moments: Moment[]): Promise<void>
       }
     }
   });
+  return true;
 }
 
 async function insertRows(
@@ -317,6 +370,7 @@ async function insertRows(
         artefact_hash: row.kept.hash,
         status: row.status,
         headers: JSON.stringify(row.headers),
+        drawn_at: row.drawnAt,
         build: row.isPage ? build : null,
         generation,
       })),
@@ -326,6 +380,7 @@ async function insertRows(
         artefact_hash: eb.ref('excluded.artefact_hash'),
         status: eb.ref('excluded.status'),
         headers: eb.ref('excluded.headers'),
+        drawn_at: eb.ref('excluded.drawn_at'),
         build: eb.ref('excluded.build'),
         generation: eb.ref('excluded.generation'),
       })),

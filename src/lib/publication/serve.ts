@@ -13,6 +13,7 @@ import type { ArtefactStore, Encoding } from './store.ts';
 
 /** Longest that a reader's cache may keep a page unasked, in seconds (API contract). */
 const LONGEST_AGE = 30;
+const ENCODINGS: Encoding[] = ['identity', 'br', 'gzip'];
 const POLL_MS = 1_000;
 const MEMORY_BYTES = 256 * 1024 * 1024;
 
@@ -33,7 +34,8 @@ export class PublishedPages {
   #due: number[] = [];
   #generation = -1n;
   #seenAt = new Date(0);
-  #bytes = new Map<string, Uint8Array>();
+  #bytes = new Map<string, Promise<Uint8Array | null>>();
+  #sizes = new Map<string, number>();
   #held = 0;
   #timer: NodeJS.Timeout | undefined;
   #stopListening: (() => Promise<void>) | undefined;
@@ -98,7 +100,8 @@ export class PublishedPages {
     this.#seenAt = at;
     // What becomes public soon is read now, so that its first reader does not wait for the disk.
     for (const row of rows) {
-      if (row.visible_from > at) await this.bytes(row.artefact_hash, 'identity');
+      if (row.visible_from <= at) continue;
+      for (const encoding of ENCODINGS) await this.bytes(row.artefact_hash, encoding);
     }
   }
 
@@ -135,20 +138,35 @@ export class PublishedPages {
     const key = `${hash}.${encoding}`;
     const known = this.#bytes.get(key);
     if (known) {
+      // Those asked for last stand last, and the first are the first to go.
       this.#bytes.delete(key);
       this.#bytes.set(key, known);
       return known;
     }
-    const read = await this.store.get(hash, encoding);
-    if (!read) return null;
-    this.#bytes.set(key, read);
-    this.#held += read.byteLength;
-    for (const [oldest, bytes] of this.#bytes) {
-      if (this.#held <= MEMORY_BYTES) break;
-      this.#bytes.delete(oldest);
-      this.#held -= bytes.byteLength;
+    // Kept as a promise, so that many who ask at once read the disk once.
+    const reading = this.store.get(hash, encoding);
+    this.#bytes.set(key, reading);
+    try {
+      const read = await reading;
+      this.#sizes.set(key, read?.byteLength ?? 0);
+      this.#held += read?.byteLength ?? 0;
+      this.#makeRoom();
+      return read;
+    } catch (error) {
+      this.#bytes.delete(key);
+      throw error;
     }
-    return read;
+  }
+
+  #makeRoom(): void {
+    for (const key of this.#bytes.keys()) {
+      if (this.#held <= MEMORY_BYTES) break;
+      const size = this.#sizes.get(key);
+      if (size === undefined) continue;
+      this.#bytes.delete(key);
+      this.#sizes.delete(key);
+      this.#held -= size;
+    }
   }
 
   /** Whether every page of the site's start is there. */

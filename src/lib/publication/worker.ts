@@ -17,7 +17,12 @@ export interface WorkerData {
  */
 export function startWorker(app: NodeApp, data: WorkerData): (task: Task) => Promise<unknown> {
   let opening: Promise<RuntimeParts> | undefined;
-  const opened = () => (opening ??= openRuntime(data.env, { connections: 2 }));
+  const opened = () =>
+    (opening ??= openRuntime(data.env, { connections: 2 }).catch((error: unknown) => {
+      // The next task tries again: the database may only have been away.
+      opening = undefined;
+      throw error;
+    }));
   return (task) =>
     perform(task, {
       fonts: join(data.root, 'node_modules', '@fontsource'),

@@ -17,13 +17,21 @@ export interface Examined {
   race: RaceResult | null;
 }
 
+/** So many computations wait that another would not be done soon: try again in a moment. */
+export class BusyError extends Error {
+  override name = 'BusyError';
+  constructor() {
+    super('The computation is busy. Try again in a moment.');
+  }
+}
+
 /** The heavy work, kept off the serving loop: in the process a pool of threads, in tests whatever answers the same. */
 export interface Workers {
   /** Renders the page of an address with the built site; the same bytes as a request for it in that view. */
   page(address: string, view: View): Promise<RenderedPage>;
   /** Draws the share image of a release's surprise. */
   shareImage(input: ShareImageInput): Promise<ShareImage>;
-  /** The contract's computation; throws econ's `RefusedError`. */
+  /** The contract's computation; throws econ's `RefusedError`, or `BusyError`. */
   compute(request: ComputeRequest): Promise<ComputeResult>;
   /** What the numbers allow a writer to say, and the forecast race; no race where the series are too short for one. */
   examine(

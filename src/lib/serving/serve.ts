@@ -5,10 +5,10 @@ import { dirname, join } from 'node:path';
 import { setTimeout as sleep } from 'node:timers/promises';
 import { type SeedSize, seedWhereEmpty } from '../../../seed/first.ts';
 import type { Env } from '../env.ts';
-import { bringUpToDate, isBehind, redraw } from '../publication/moments.ts';
+import { bringUpToDate, isBehind, lateReleases, redraw } from '../publication/moments.ts';
 import { startPool } from '../publication/pool.ts';
 import { PublishedPages } from '../publication/serve.ts';
-import { contextFor } from '../runtime.ts';
+import { type Runtime, contextFor } from '../runtime.ts';
 import { loadAssets } from './assets.ts';
 import { createHandler } from './handler.ts';
 import { databaseUrl, openRuntime } from './runtime.ts';
@@ -48,12 +48,20 @@ export async function serveSite(
   const ctx = contextFor(runtime, SYSTEM);
 
   if (env.mode === 'demo') await seedWhereEmpty(runtime, onProgress, seed);
+  // What is in force must be answered even where a page cannot be drawn again, or something coming not at all.
   const drawn = await redraw(ctx, (done, all) => {
     if (done === all || done % 25 === 0)
       onProgress(`Drawing pages for this build, ${done} of ${all}`);
+  }).catch((error: unknown) => {
+    log.error({ err: error }, 'the pages of another build stay, as one cannot be drawn again');
+    return 0;
   });
   if (drawn > 0) log.info({ pages: drawn }, 'drew the pages for this build');
-  if (await isBehind(runtime.db, ctx.now())) await bringUpToDate(ctx);
+  if (await isBehind(runtime.db, ctx.now())) {
+    await bringUpToDate(ctx).catch((error: unknown) =>
+      log.error({ err: error }, 'a coming moment cannot be drawn'),
+    );
+  }
 
   const pages = new PublishedPages(runtime.db, runtime.clock, runtime.store);
   await pages.start(databaseUrl(env), (error) => log.warn({ err: error }, 'pages fall behind'));
@@ -74,8 +82,10 @@ export async function serveSite(
     server.listen(env.port, env.host, resolve);
   });
 
+  const told = new Set<string>();
   const stopKeeping = keepUp(
     async () => {
+      await tellLate(runtime, told);
       if (await isBehind(runtime.db, runtime.clock.now())) await bringUpToDate(ctx);
     },
     (error) => log.error({ err: error }, 'a coming release is not ready'),
@@ -93,6 +103,15 @@ export async function serveSite(
       await close();
     },
   };
+}
+
+/** Says once of each release that missed its second that it is late; it needs a newly announced time. */
+async function tellLate({ db, clock, log }: Runtime, told: Set<string>): Promise<void> {
+  for (const id of await lateReleases(db, clock.now())) {
+    if (told.has(id)) continue;
+    told.add(id);
+    log.error({ release: id }, 'a release missed its second: its pages were not ready');
+  }
 }
 
 /** Looks again and again whether a release waits for its pages; one that another process left behind is drawn here. */

@@ -1,6 +1,7 @@
 import { methodVersion } from '../../build.ts';
 import { RefusedError } from '../../econ/refusal.ts';
 import type { Assumptions, ComputeRequest, ComputeResult } from '../../econ/types.ts';
+import { BusyError } from '../../publication/workers.ts';
 import { record } from '../audit.ts';
 import { type ServiceContext, ServiceError } from '../context.ts';
 import { requirePermission } from '../people/permissions.ts';
@@ -63,6 +64,7 @@ async function computed(ctx: ServiceContext, request: ComputeRequest): Promise<C
   try {
     return await ctx.workers.compute(request);
   } catch (error) {
+    if (error instanceof BusyError) throw new ServiceError('conflict', error.message);
     if (!(error instanceof RefusedError)) throw error;
     throw new ServiceError(
       'invalid',

@@ -31,10 +31,10 @@ export async function scheduleRelease(
   const actor = requirePermission(ctx.actor, 'releases.schedule');
   const { id, at, reason } = parseInput(fields, input);
   if (at.getMilliseconds() !== 0) throw fault('at', 'Enter a time to the second.');
-  await transact(ctx, async (trx) => {
+  const isNew = await transact(ctx, async (trx) => {
     const release = await lockedRelease(trx, id);
     const isSame = release.scheduled_for?.getTime() === at.getTime();
-    if (release.state === 'scheduled' && isSame) return;
+    if (release.state === 'scheduled' && isSame) return false;
     requireStep(trx, release, 'schedule');
     await requireSecondPair(trx, id, actor);
     const ahead = at.getTime() - trx.now().getTime();
@@ -69,8 +69,21 @@ export async function scheduleRelease(
       subject: `release ${id}`,
       detail: { at, announced, ...(reason && { reason }) },
     });
+    return true;
   });
+  if (!isNew) return;
   await bringUpToDate(ctx);
+  const { ready_for } = await ctx.db
+    .selectFrom('release')
+    .select('ready_for')
+    .where('id', '=', id)
+    .executeTakeFirstOrThrow();
+  if (ready_for?.getTime() !== at.getTime()) {
+    throw new ServiceError(
+      'conflict',
+      'Its pages were not ready at that second. Take it off the schedule and choose a later one.',
+    );
+  }
 }
 
 /** A revision comes out after the one it replaces. */
