@@ -1,12 +1,17 @@
+/** PostgreSQL's text cannot hold NUL, and nobody types it. */
+function withoutNul(text: string): string {
+  return text.replaceAll('\0', '');
+}
+
 /** What was typed into a form, kept when it is shown again. */
 export class Typed {
   constructor(private readonly data: FormData | null = null) {}
 
   /** The text of a field; `otherwise` where the form was not sent yet. */
   text(field: string, otherwise = ''): string {
-    if (!this.data) return otherwise;
+    if (!this.data) return withoutNul(otherwise);
     const value = this.data.get(field);
-    return typeof value === 'string' ? value : '';
+    return typeof value === 'string' ? withoutNul(value) : '';
   }
 
   /** Whether a box is ticked; `otherwise` where the form was not sent yet. */
@@ -16,7 +21,9 @@ export class Typed {
 
   file(field: string): File | null {
     const value = this.data?.get(field);
-    return value instanceof File && value.name !== '' ? value : null;
+    if (!(value instanceof File) || value.name === '') return null;
+    const name = withoutNul(value.name);
+    return name === value.name ? value : new File([value], name, { type: value.type });
   }
 }
 

@@ -3,6 +3,7 @@ import type { NodeApp } from 'astro/app/node';
 import { randomUUID } from 'node:crypto';
 import type { IncomingMessage, ServerResponse } from 'node:http';
 import { createApi } from '../../../api/app.ts';
+import { badRequest } from '../../../api/problems.ts';
 import { isMigrated } from '../../../db/migrate.ts';
 import { isLoopback } from '../env.ts';
 import { type PublishedPages, send } from '../publication/serve.ts';
@@ -13,6 +14,12 @@ import { render } from './render.ts';
 
 /** Rendered when asked for: they depend on who asks. */
 const ON_DEMAND = /^\/(desk|account|admin|sign-in|sign-up|sign-out)(\/|$)/;
+
+/** Far more than any form of prose needs. */
+const LARGEST_BODY = 256 * 1024;
+/** Takes data files, and refuses a large one in its own words by the length its sender gives, without reading it. */
+const TAKES_FILES = /^\/desk\/data\/?$/;
+const FORM = /^(application\/x-www-form-urlencoded|multipart\/form-data)\s*(;|$)/i;
 
 export interface HandlerParts {
   app: NodeApp;
@@ -32,7 +39,7 @@ export function createHandler({ app, runtime, pages, assets }: HandlerParts): Ha
       incoming: IncomingMessage;
       outgoing: ServerResponse;
     };
-    return render(app, runtime, request, {
+    return render(app, runtime, asAddressed(runtime, request, incoming), {
       clientAddress: incoming.socket.remoteAddress ?? '',
       requestId: String(outgoing.getHeader('x-request-id')),
     });
@@ -40,13 +47,14 @@ export function createHandler({ app, runtime, pages, assets }: HandlerParts): Ha
 
   return async (request, response) => {
     response.setHeader('x-request-id', randomUUID());
-    const path = pathOf(request.url ?? '/');
+    const target = request.url ?? '/';
+    const path = pathOf(target);
+    if (path === null) return unreadable(response, target);
     if (path === '/healthz') return plain(response, 200, 'alive\n');
     if (path === '/readyz') return readiness(runtime, pages, response);
     if (!isOurHost(runtime, request.headers.host)) {
       return plain(response, 421, 'This address is not served here.\n');
     }
-    if (path === null) return plain(response, 400, 'The address cannot be read.\n');
     const isRead = request.method === 'GET' || request.method === 'HEAD';
 
     // The page's own address answers 404 as any other that is not there.
@@ -56,11 +64,17 @@ export function createHandler({ app, runtime, pages, assets }: HandlerParts): Ha
       response.setHeader('allow', 'GET, HEAD');
       return plain(response, 405, 'This address can only be read.\n');
     }
-    if (path.startsWith('/api/v') || path === '/api') {
+    if (path.startsWith('/api/v')) {
       await answerApi(request, response);
       return;
     }
     if (ON_DEMAND.test(path)) {
+      const refused = isRead ? null : refusedBody(path, request);
+      if (refused) {
+        // Without a length there is no saying how long the rest would take.
+        if (refused.status === 411) response.setHeader('connection', 'close');
+        return plain(response, refused.status, refused.text);
+      }
       await answerOnDemand(request, response);
       return;
     }
@@ -76,6 +90,37 @@ export function createHandler({ app, runtime, pages, assets }: HandlerParts): Ha
     if (missing) return send(pages, missing, request, response);
     return plain(response, 404, 'There is nothing at this address.\n');
   };
+}
+
+/**
+ * The request under the address the reader sees: behind TLS that is not the one which reached this process, and
+ * Astro compares it with a form's origin. The demo is reached directly, by whichever name of this machine.
+ */
+function asAddressed(runtime: Runtime, request: Request, incoming: IncomingMessage): Request {
+  if (runtime.env.mode !== 'production') return request;
+  const { method, headers, body, signal } = request;
+  const init = { method, headers, body, signal, duplex: 'half' };
+  return new Request(new URL(runtime.env.publicUrl + incoming.url!), init);
+}
+
+/** Why the body of a request to a page on demand is not read, judged by its headers alone; null where it may be. */
+function refusedBody(
+  path: string,
+  { method, headers }: IncomingMessage,
+): { status: number; text: string } | null {
+  if (headers['content-length'] === undefined) {
+    return { status: 411, text: 'The request must say how long it is (Content-Length).\n' };
+  }
+  const length = Number(headers['content-length']);
+  if (length > LARGEST_BODY && !TAKES_FILES.test(path)) {
+    return { status: 413, text: 'A form may hold at most 256 KiB.\n' };
+  }
+  const type = headers['content-type'] ?? '';
+  const isNothing = length === 0 && type === '';
+  if (method === 'POST' && !isNothing && !FORM.test(type)) {
+    return { status: 415, text: 'Only forms can be sent to this address.\n' };
+  }
+  return null;
 }
 
 /** In the demo only this machine; in production the public address and this machine. */
@@ -117,6 +162,21 @@ function sendAsset(asset: Asset, request: IncomingMessage, response: ServerRespo
   }
   response.setHeader('content-length', asset.bytes.byteLength);
   response.writeHead(200).end(request.method === 'HEAD' ? undefined : asset.bytes);
+}
+
+/** The API answers in problem documents always, also where it is not asked. */
+function unreadable(response: ServerResponse, target: string): void {
+  const message = 'The address cannot be read.';
+  if (!target.startsWith('/api/v')) return plain(response, 400, `${message}\n`);
+  const { status, type, title, detail, errors } = badRequest([{ message }]).parts;
+  const instance = `urn:uuid:${String(response.getHeader('x-request-id'))}`;
+  response.setHeader('content-type', 'application/problem+json');
+  response.setHeader('cache-control', 'no-store');
+  response.setHeader('x-content-type-options', 'nosniff');
+  response.setHeader('access-control-allow-origin', '*');
+  response
+    .writeHead(status)
+    .end(`${JSON.stringify({ type, title, status, detail, instance, errors })}\n`);
 }
 
 function plain(response: ServerResponse, status: number, text: string): void {
