@@ -1,35 +1,19 @@
 import { type Transaction, sql } from 'kysely';
 import type { Db } from '../../../db/connection.ts';
-import { changedEconomies } from '../../../db/queries/changedEconomies.ts';
-import { PUBLICATION_LOCK } from '../../../db/queries/publicationLock.ts';
-import { currentHashes, nextGeneration } from '../../../db/queries/published.ts';
+import { nextGeneration } from '../../../db/queries/published.ts';
 import type { Database } from '../../../db/tables.ts';
 import type { InTransaction, ServiceContext } from '../services/context.ts';
-import { listEconomies } from '../services/economies/public.ts';
-import { listReleases } from '../services/releases/public.ts';
-import type { View } from '../services/view.ts';
-import { type Kept, keep, recordArtefacts } from './artefacts.ts';
-import { type Planned, SITE_PAGES, economyPage, releasePages } from './plan.ts';
-import { type PlacedFile, filesOf } from './files.ts';
-
-/** How long after drawing an immediate change counts, so that every process has it before it does. */
-const IMMEDIATE_MS = 3_000;
-
-interface Coming extends Planned {
-  id: string;
-  at: Date;
-  vintageId: string;
-}
-
-interface Row {
-  address: string;
-  kept: Kept;
-  status: number;
-  headers: Record<string, string>;
-  isPage: boolean;
-  /** What was committed by then is in it. */
-  drawnAt: Date;
-}
+import { recordArtefacts } from './artefacts.ts';
+import {
+  type Coming,
+  IMMEDIATE_MS,
+  type Row,
+  changes,
+  drawImmediate,
+  drawMoment,
+  drawPage,
+} from './draw.ts';
+import { exclusively } from './lock.ts';
 
 interface Moment {
   at: Date;
@@ -176,29 +160,6 @@ export async function redraw(
   });
 }
 
-/** The end of the queue of those in this process who want the lock, for each database. */
-const queues = new WeakMap<Db, Promise<unknown>>();
-
-/** One at a time: here by a queue, so that waiting takes no connection, and among processes by the advisory lock. */
-async function exclusively<T>(db: Db, work: () => Promise<T>): Promise<T> {
-  const before = queues.get(db) ?? Promise.resolve();
-  const mine = before.catch(() => {}).then(() => withLock(db, work));
-  queues.set(db, mine);
-  return mine;
-}
-
-function withLock<T>(db: Db, work: () => Promise<T>): Promise<T> {
-  return db.connection().execute(async (connection) => {
-    await sql`select pg_advisory_lock(${PUBLICATION_LOCK})`.execute(connection);
-    try {
-      return await work();
-    } finally {
-      // A connection that broke has given the lock back already.
-      await sql`select pg_advisory_unlock(${PUBLICATION_LOCK})`.execute(connection).catch(() => {});
-    }
-  });
-}
-
 async function comingReleases(db: Db, now: Date): Promise<Coming[]> {
   const rows = await db
     .selectFrom('release')
@@ -225,85 +186,6 @@ function groupBySecond(coming: Coming[]): Coming[][] {
     groups.set(time, [...(groups.get(time) ?? []), release]);
   }
   return [...groups.values()];
-}
-
-async function drawMoment(ctx: ServiceContext, at: Date, releases: Coming[]): Promise<Row[]> {
-  const drawnAt = ctx.now();
-  const view: View = { at, rehearsedAt: drawnAt };
-  const pages = new Set<string>(SITE_PAGES);
-  const files: PlacedFile[] = [];
-  for (const release of releases) {
-    pages.add(economyPage(release.economyCode));
-    for (const address of releasePages(release)) pages.add(address);
-    for (const address of await pagesBefore(ctx, view, release)) pages.add(address);
-    files.push(...(await filesOf(ctx, view, release)));
-  }
-  const rows = await Promise.all([...pages].map((address) => drawPage(ctx, address, view)));
-  for (const { address, kept } of files) {
-    const headers = {
-      'content-type': kept.mediaType,
-      'x-content-type-options': 'nosniff',
-      'access-control-allow-origin': '*',
-      // An image opened by itself is a document: it may do nothing.
-      'content-security-policy': "default-src 'none'; sandbox",
-    };
-    rows.push({ address, kept, status: 200, headers, isPage: false, drawnAt });
-  }
-  return rows;
-}
-
-/** The pages of the month before, which lead on to this one. */
-async function pagesBefore(ctx: ServiceContext, view: View, release: Planned): Promise<string[]> {
-  const all = await listReleases(ctx.db, view, { economy: release.economyCode });
-  const [before] = all
-    .filter(({ period }) => period < release.period)
-    .toSorted((a, b) => (a.period < b.period ? 1 : -1));
-  return before ? releasePages(before) : [];
-}
-
-/**
- * What changed outside of any moment, drawn as it is now: announced dates and specifications, in the pages of their
- * economies, in the newest explainer, which names the next date, and in the pages of the site.
- */
-async function drawImmediate(ctx: ServiceContext): Promise<Row[]> {
-  const now = ctx.now();
-  const changed = await changes(ctx.db, now);
-  if (!changed) return [];
-  const economies = await listEconomies(ctx.db, { at: now });
-  const ofChanged = economies
-    .filter(({ economy }) => changed.includes(economy.code))
-    .flatMap(({ economy, latest }) => [
-      economyPage(economy.code),
-      ...(latest ? releasePages(latest) : []),
-    ]);
-  const pages = [...SITE_PAGES, ...ofChanged];
-  const rows = await Promise.all(pages.map((address) => drawPage(ctx, address, { at: now })));
-  const inForce = await currentHashes(ctx.db, pages, now);
-  // The page of a changed economy is put in force even where it looks the same: it is what says that it was drawn.
-  return rows.filter(
-    (row) => ofChanged.includes(row.address) || inForce.get(row.address) !== row.kept.hash,
-  );
-}
-
-/** Codes of the economies that changed outside of any moment; null where nothing did, and the site has its pages. */
-async function changes(db: Db, at: Date): Promise<string[] | null> {
-  const effective = new Date(at.getTime() + IMMEDIATE_MS);
-  const changed = await changedEconomies(db, at, effective);
-  if (changed.length > 0) return changed;
-  return (await currentHashes(db, ['/'], effective)).has('/') ? null : [];
-}
-
-async function drawPage(ctx: ServiceContext, address: string, view: View): Promise<Row> {
-  // Drawn again later, a page still shows its own instant.
-  const drawnAt = new Date(Math.min(ctx.now().getTime(), view.at.getTime()));
-  const page = await ctx.workers.page(address, view);
-  const expected = address === '/404/' ? 404 : 200;
-  if (page.status !== expected) {
-    throw new Error(`${address} answered ${page.status} while it was drawn`);
-  }
-  const mediaType = page.headers['content-type'] ?? 'text/html; charset=utf-8';
-  const kept = await keep(ctx, page.body, mediaType);
-  return { address, kept, status: page.status, headers: page.headers, isPage: true, drawnAt };
 }
 
 /**
