@@ -121,7 +121,8 @@ describe.each(LISTS)('the pages of %s', (path) => {
   });
 
   it('refuse a parameter given twice', async () => {
-    await problemOf(await scene.get(`${path}?limit=1&limit=2`), 400);
+    const problem = await problemOf(await scene.get(`${path}?limit=1&limit=2`), 400);
+    expect(problem.errors).toEqual([{ parameter: 'limit', message: 'limit may be given once.' }]);
   });
 });
 

@@ -23,4 +23,15 @@ describe('an explainer’s Markdown', () => {
   ])('lets nothing through that runs, loads or restyles: %s', (markdown) => {
     expect(markdownToHtml(markdown)).not.toMatch(/script|style|class|onclick|<img|iframe|data:/);
   });
+
+  it.each([
+    ['quotations', '>'.repeat(19_990)],
+    ['lists', '- '.repeat(9_990)],
+    ['numbered lists', '1. '.repeat(6_000)],
+    ['emphasis', `${'*'.repeat(400)}x${'*'.repeat(400)}`],
+    ['indented lists', Array.from({ length: 138 }, (_, i) => `${' '.repeat(2 * i)}- a`).join('\n')],
+  ])('stands as typed where it nests beyond sense: %s', (_, nested) => {
+    const html = markdownToHtml(`${nested}\n\n<b>&`);
+    expect(html).toBe(`<p>${nested}\n\n&#x3C;b>&#x26;</p>`);
+  });
 });

@@ -124,6 +124,27 @@ describe('signing up', () => {
     });
   });
 
+  test('is limited: ten an hour from one address, and the next makes no account', async () => {
+    const from = client();
+    const person = (i: number) => ({
+      name: 'Many',
+      email: `many${i}@example.org`,
+      password: PASSWORD,
+    });
+    for (let i = 0; i < 10; i += 1) await signUp(desk.product, auth, from, person(i));
+    await expect(signUp(desk.product, auth, from, person(10))).rejects.toMatchObject({
+      kind: 'forbidden',
+      message: expect.stringMatching(/No account was made; try again in \d+ minutes\./),
+    });
+    const made = await desk.db
+      .selectFrom('person')
+      .select('email')
+      .where('name', '=', 'Many')
+      .execute();
+    expect(made).toHaveLength(10);
+    await signUp(desk.product, auth, client(), person(10));
+  });
+
   test('is not possible past the service', async () => {
     const sent = { name: 'X', email: 'x@example.org', password: PASSWORD, role: 'administrator' };
     expect((await ask(auth, client(), '/sign-up/email', sent)).ok).toBe(false);

@@ -3,6 +3,7 @@ import { ServiceError } from '../../lib/services/context.ts';
 import { approveRelease } from '../../lib/services/releases/approve.ts';
 import { chooseInputs } from '../../lib/services/releases/chooseInputs.ts';
 import { computeRelease } from '../../lib/services/releases/compute.ts';
+import { getDeskRelease } from '../../lib/services/releases/get.ts';
 import { scheduleRelease } from '../../lib/services/releases/schedule.ts';
 import { sendBackRelease } from '../../lib/services/releases/sendBack.ts';
 import { submitRelease } from '../../lib/services/releases/submit.ts';
@@ -30,7 +31,7 @@ export async function takeStep(ctx: ServiceContext, id: string, typed: Typed): P
       return;
     case 'compute':
       await write();
-      await computeRelease(ctx, id);
+      await computeUnlessInReview(ctx, id);
       return;
     case 'inputs':
       await chooseInputs(ctx, {
@@ -53,5 +54,16 @@ export async function takeStep(ctx: ServiceContext, id: string, typed: Typed): P
       return unscheduleRelease(ctx, { id, reason });
     default:
       throw new ServiceError('invalid', 'The form asked for nothing that can be done.');
+  }
+}
+
+/** What is in review has been computed, so a form to compute it that was sent twice asks for nothing more. */
+async function computeUnlessInReview(ctx: ServiceContext, id: string): Promise<void> {
+  try {
+    await computeRelease(ctx, id);
+  } catch (error) {
+    // Asked only after a refusal: the form's twin may have moved the release on during the computation.
+    const isConflict = error instanceof ServiceError && error.kind === 'conflict';
+    if (!isConflict || (await getDeskRelease(ctx, id)).state !== 'in_review') throw error;
   }
 }

@@ -1,5 +1,6 @@
 import type { Db } from '../../../../db/connection.ts';
 import type { Economy, Series } from '../../../../db/tables.ts';
+import { comparePeriods } from '../../econ/periods.ts';
 import type { Assumptions } from '../../econ/types.ts';
 import { type Announced, upcoming } from '../calendar/upcoming.ts';
 import { type ReleaseSummary, listReleases } from '../releases/public.ts';
@@ -10,6 +11,7 @@ export interface EconomyStanding {
   economy: Economy;
   /** Input series, money first. */
   series: Series[];
+  /** The approved version that the next announced release, or else the latest, is computed under. */
   specification: {
     version: number;
     assumptions: Assumptions;
@@ -27,7 +29,6 @@ export async function listEconomies(db: Db, view: View): Promise<EconomyStanding
     db.selectFrom('series').selectAll().execute(),
     db
       .selectFrom('specification')
-      .distinctOn('economy_code')
       .selectAll()
       .where('approved_at', '<=', view.at)
       .orderBy('economy_code')
@@ -43,7 +44,12 @@ export async function listEconomies(db: Db, view: View): Promise<EconomyStanding
   }
   return economies
     .map((economy) => {
-      const specification = specifications.find((row) => row.economy_code === economy.code);
+      const latest = newest.get(economy.code) ?? null;
+      const next = announced.find((row) => row.economyCode === economy.code) ?? null;
+      const specification = inForce(
+        specifications.filter((row) => row.economy_code === economy.code),
+        next?.period ?? latest?.period,
+      );
       return {
         economy,
         series: CONCEPTS.flatMap((concept) =>
@@ -57,11 +63,25 @@ export async function listEconomies(db: Db, view: View): Promise<EconomyStanding
               holdsFrom: specification.holds_from,
             }
           : null,
-        latest: newest.get(economy.code) ?? null,
-        next: announced.find((row) => row.economyCode === economy.code) ?? null,
+        latest,
+        next,
       };
     })
     .filter((standing) => standing.latest !== null || standing.next !== null);
+}
+
+/**
+ * Of versions sorted newest first, the one a period is computed under. Where all of them begin later, the first
+ * version: it is what the economy will begin with.
+ */
+function inForce<Version extends { holds_from: string }>(
+  versions: Version[],
+  period: string | undefined,
+): Version | undefined {
+  const holding = versions.find(
+    ({ holds_from: from }) => period !== undefined && comparePeriods(from, period) <= 0,
+  );
+  return holding ?? versions.at(-1);
 }
 
 /** One economy as readers see it, or null where it is unknown or has nothing public yet. */

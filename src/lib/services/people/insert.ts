@@ -20,16 +20,31 @@ export const personFields = {
 };
 
 /**
+ * A password as `insertPerson` takes it from callers who make it before their transaction: scrypt takes long on
+ * purpose, and whoever signs up must not hold a connection meanwhile.
+ */
+export async function hashed(password: string): Promise<{ hash: string }> {
+  return { hash: await hashPassword(password) };
+}
+
+/**
  * Writes a person and their password's hash as better-auth would, but in our transaction, so that the audit row
  * stands or falls with them. Null where somebody has that address.
  */
 export async function insertPerson(
   ctx: InTransaction,
-  person: { name: string; email: string; role: Role; verified: boolean; password: string },
+  person: {
+    name: string;
+    email: string;
+    role: Role;
+    verified: boolean;
+    password: string | { hash: string };
+  },
 ): Promise<string | null> {
   const id = generateId();
   // Before it is known whether the address is new, so that the time taken does not tell.
-  const password = await hashPassword(person.password);
+  const { hash } =
+    typeof person.password === 'string' ? await hashed(person.password) : person.password;
   const at = ctx.now();
   const made = await ctx.db
     .insertInto('person')
@@ -53,7 +68,7 @@ export async function insertPerson(
       account_id: id,
       provider_id: 'credential',
       person_id: id,
-      password,
+      password: hash,
       created_at: at,
       updated_at: at,
     })

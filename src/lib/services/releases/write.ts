@@ -10,6 +10,18 @@ import { lockedRelease, requireDraft, requireVersion } from './locked.ts';
 /** How long the words of a release may be, in characters. */
 export const WORDS = { headline: 120, explainer: 20_000 };
 
+/** How many marks of quotations and lists may open a line: readers get lost, and so does a parser's stack. */
+const MARKS = 5;
+const TOO_MANY_MARKS = new RegExp(
+  String.raw`^[ \t]*(?:>[ \t]*|(?:[-+*]|\d{1,9}[.)])[ \t]+){${MARKS + 1}}`,
+  'm',
+);
+
+/** Whether a line of this Markdown opens more quotations and lists inside each other than an explainer may. */
+export function nestsTooDeep(markdown: string): boolean {
+  return TOO_MANY_MARKS.test(markdown);
+}
+
 const words = z.object({
   id: z.string(),
   version: z.number().int(),
@@ -24,7 +36,11 @@ const words = z.object({
     .pipe(
       z
         .string()
-        .max(WORDS.explainer, `Use at most ${WORDS.explainer.toLocaleString('en-GB')} characters.`),
+        .max(WORDS.explainer, `Use at most ${WORDS.explainer.toLocaleString('en-GB')} characters.`)
+        .refine(
+          (text) => !nestsTooDeep(text),
+          `Begin no line with more than ${MARKS} marks of quotations or lists.`,
+        ),
     ),
 });
 
@@ -46,9 +62,9 @@ export async function writeRelease(ctx: ServiceContext, input: ReleaseWords): Pr
   const { id, version, headline, explainer } = parseInput(words, input);
   return transact(ctx, async (trx) => {
     const release = await lockedRelease(trx, id);
-    requireDraft(release);
-    // The same words again, from a form sent twice, are no change and no conflict.
+    // The same words again are no change and no conflict: a form sent twice finds the release already in review.
     if (release.headline === headline && release.explainer === explainer) return release.version;
+    requireDraft(release);
     requireVersion(release, version);
     await trx.db
       .updateTable('release')

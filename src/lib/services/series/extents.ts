@@ -1,5 +1,5 @@
 import type { Db } from '../../../../db/connection.ts';
-import { addPeriods } from '../../econ/periods.ts';
+import { addPeriods, comparePeriods } from '../../econ/periods.ts';
 import { isVisible, publishedAt } from '../releases/visible.ts';
 import type { View } from '../view.ts';
 
@@ -89,14 +89,21 @@ export async function firstExtents(
   return extents;
 }
 
-/** A vintage of one series that readers may see, and the release that made it public. */
+/** A vintage of one series that readers may see up to `lastPeriod`, and the release that made it public so far. */
 export interface ServedVintage extends DatedExtent {
   vintageId: string;
+  firstPeriod: string;
+  lastPeriod: string;
 }
 
 /**
- * By series id, the vintage readers see: of those a visible release has frozen, the one whose source is the latest.
- * It is found by its releases and not by `public_from`, so that a rehearsed moment shows it too.
+ * By series id, the vintage readers see: of those a visible release has frozen, the one that is public furthest, and
+ * of these the one whose source is the latest. It is found by its releases and not by `public_from`, so that a
+ * rehearsed moment shows it too.
+ *
+ * A release makes its vintage public up to its own reference period and no further: what the file holds beyond
+ * belongs to a release still to come. Hence a correction of an older month does not take the place of a vintage that
+ * reaches a newer one.
  */
 export async function servedVintages(
   db: Db,
@@ -107,10 +114,16 @@ export async function servedVintages(
   const frozen = db
     .selectFrom('release')
     .distinctOn('release.vintage_id')
-    .select(['release.vintage_id', 'release.id', publishedAt(view).as('published_at')])
+    .select([
+      'release.vintage_id',
+      'release.id',
+      'release.period',
+      publishedAt(view).as('published_at'),
+    ])
     .where(isVisible(view))
     .where('release.economy_code', 'in', economies)
     .orderBy('release.vintage_id')
+    .orderBy('release.period', 'desc')
     .orderBy('published_at')
     .orderBy('release.id');
   const rows = await db
@@ -123,23 +136,29 @@ export async function servedVintages(
       'vintage_series.vintage_id',
       'vintage_series.start',
       'frozen.id',
+      'frozen.period',
       'frozen.published_at',
     ])
     .select((eb) => eb.fn<number>('cardinality', ['vintage_series.values']).as('count'))
+    .whereRef('vintage_series.start', '<=', 'frozen.period')
     .orderBy('vintage_series.series_id')
+    .orderBy('frozen.period', 'desc')
     .orderBy('vintage.source_published_at', 'desc')
     .orderBy('vintage.id', 'desc')
     .execute();
   return new Map(
-    rows.map((row) => [
-      row.series_id,
-      {
-        vintageId: row.vintage_id,
-        firstPeriod: row.start,
-        lastPeriod: addPeriods(row.start, row.count - 1),
-        lastUpdated: row.published_at,
-        releaseId: row.id,
-      },
-    ]),
+    rows.map((row) => {
+      const held = addPeriods(row.start, row.count - 1);
+      return [
+        row.series_id,
+        {
+          vintageId: row.vintage_id,
+          firstPeriod: row.start,
+          lastPeriod: comparePeriods(held, row.period) > 0 ? row.period : held,
+          lastUpdated: row.published_at,
+          releaseId: row.id,
+        },
+      ];
+    }),
   );
 }

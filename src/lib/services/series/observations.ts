@@ -1,5 +1,5 @@
 import type { Db } from '../../../../db/connection.ts';
-import { periodsFrom } from '../../econ/periods.ts';
+import { periodDifference, periodsFrom } from '../../econ/periods.ts';
 import { isVisible, publishedAt } from '../releases/visible.ts';
 import type { View } from '../view.ts';
 import type { DerivedConcept } from './concepts.ts';
@@ -30,7 +30,7 @@ export interface Span {
 }
 
 /**
- * What a view shows of a series, oldest first: an input's newest public vintage; of a derived one the latest
+ * What a view shows of a series, oldest first: an input's public vintage as far as it is released; of a derived one the latest
  * release's history, or each period as first published. Empty where its values are not served.
  */
 export async function observations(
@@ -62,7 +62,8 @@ async function inputValues(
     .where('vintage_id', '=', vintage.vintageId)
     .where('series_id', '=', series.id)
     .executeTakeFirstOrThrow();
-  return periodsFrom(row.start, row.values.length, series.frequency)
+  const count = periodDifference(row.start, vintage.lastPeriod) + 1;
+  return periodsFrom(row.start, count, series.frequency)
     .map((period, i): Observation => {
       const digits = row.values[i]!;
       const { releaseId, lastUpdated } = vintage;
