@@ -1,3 +1,4 @@
+import { sql } from 'kysely';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { COMING_SECOND, FIRST_SECOND, NOW, openScene, SECOND_SECOND, type Scene } from './scene.ts';
 
@@ -148,22 +149,27 @@ describe('concepts', () => {
   });
 
   it('mark a gap as an assumption, without ends, where the model is rejected', async () => {
-    await scene.desk.db
-      .deleteFrom('release_value')
-      .where('release_id', '=', 'XTB-2030-12-r1')
-      .where('indicator', '=', 'implied_gap')
-      .execute();
-    await scene.desk.db
-      .insertInto('release_value')
-      .values({
-        release_id: 'XTB-2030-12-r1',
-        indicator: 'implied_gap',
-        period: '2030-12',
-        value: 0.5,
-        lower: null,
-        upper: null,
-      })
-      .execute();
+    // A published value never changes, so the trigger that says so is off while a rejected model is put in its place.
+    await scene.desk.db.transaction().execute(async (trx) => {
+      await sql`alter table release_value disable trigger user`.execute(trx);
+      await trx
+        .deleteFrom('release_value')
+        .where('release_id', '=', 'XTB-2030-12-r1')
+        .where('indicator', '=', 'implied_gap')
+        .execute();
+      await trx
+        .insertInto('release_value')
+        .values({
+          release_id: 'XTB-2030-12-r1',
+          indicator: 'implied_gap',
+          period: '2030-12',
+          value: 0.5,
+          lower: null,
+          upper: null,
+        })
+        .execute();
+      await sql`alter table release_value enable trigger user`.execute(trx);
+    });
     for (const [concept, value] of [
       ['implied_gap', 0.5],
       ['implied_gap_lower', null],
