@@ -57,8 +57,9 @@ export async function seedStage(): Promise<Stage> {
 
 function drawingWorkers(drawn: Stage['drawn']): Workers {
   return plainWorkers({
-    async page(address, { at }) {
-      drawn.push({ address, at });
+    async page(address, { at, include }) {
+      // What is drawn to see whether it can be is not put in force.
+      if (!include) drawn.push({ address, at });
       const body = new TextEncoder().encode(`${address} at ${at.toISOString()}`);
       const headers = { 'content-type': 'text/html; charset=utf-8' };
       return { status: address === '/404/' ? 404 : 200, headers, body };
