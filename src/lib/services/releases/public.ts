@@ -177,16 +177,26 @@ export async function listRevisions(
     .execute();
 }
 
+/** A value of a period as revision 1 of the period's own release had it, in log points. */
+export interface FirstPublished {
+  period: string;
+  value: number | null;
+  lower: number | null;
+  upper: number | null;
+  releaseId: string;
+  publishedAt: Date;
+}
+
 /**
- * The value of each period as first published: that of revision 1 of the period's own release, log points or
- * per cent as the indicator has it. Periods before the first release are not in the list.
+ * An indicator as first published, oldest first, from `from` to `to`, both included. Periods before the first
+ * release are not in the list.
  */
 export async function firstPublished(
   db: Db,
   view: View,
-  which: { economy: string; indicator: string },
-): Promise<{ period: string; value: number | null; releaseId: string; publishedAt: Date }[]> {
-  return db
+  which: { economy: string; indicator: string; from?: string; to?: string },
+): Promise<FirstPublished[]> {
+  let query = db
     .selectFrom('release')
     .innerJoin('release_value', (join) =>
       join
@@ -196,6 +206,8 @@ export async function firstPublished(
     .select([
       'release.period',
       'release_value.value',
+      'release_value.lower',
+      'release_value.upper',
       'release.id as releaseId',
       publishedAt(view).as('publishedAt'),
     ])
@@ -203,6 +215,8 @@ export async function firstPublished(
     .where('release.economy_code', '=', which.economy)
     .where('release.revision', '=', 1)
     .where('release_value.indicator', '=', which.indicator)
-    .orderBy('release.period')
-    .execute();
+    .orderBy('release.period');
+  if (which.from) query = query.where('release.period', '>=', which.from);
+  if (which.to) query = query.where('release.period', '<=', which.to);
+  return query.execute();
 }

@@ -1,5 +1,6 @@
 import type { Db } from '../../../../db/connection.ts';
 import { periodDifference, periodsFrom } from '../../econ/periods.ts';
+import { firstPublished } from '../releases/public.ts';
 import { isVisible, publishedAt } from '../releases/visible.ts';
 import type { View } from '../view.ts';
 import type { DerivedConcept } from './concepts.ts';
@@ -114,29 +115,13 @@ async function firstValues(
   derived: DerivedConcept,
   { from, to }: Span,
 ): Promise<Observation[]> {
-  let query = db
-    .selectFrom('release')
-    .innerJoin('release_value', (join) =>
-      join
-        .onRef('release_value.release_id', '=', 'release.id')
-        .onRef('release_value.period', '=', 'release.period'),
-    )
-    .select([
-      'release.period',
-      'release_value.value',
-      'release_value.lower',
-      'release_value.upper',
-      'release.id as releaseId',
-      publishedAt(view).as('publishedAt'),
-    ])
-    .where(isVisible(view))
-    .where('release.economy_code', '=', series.economyCode)
-    .where('release.revision', '=', 1)
-    .where('release_value.indicator', '=', derived.indicator)
-    .orderBy('release.period');
-  if (from) query = query.where('release.period', '>=', from);
-  if (to) query = query.where('release.period', '<=', to);
-  return (await query.execute()).map((row) => observed(row, derived));
+  const rows = await firstPublished(db, view, {
+    economy: series.economyCode,
+    indicator: derived.indicator,
+    from,
+    to,
+  });
+  return rows.map((row) => observed(row, derived));
 }
 
 interface ValueRow {
